@@ -1,0 +1,202 @@
+import { HIGH, LOW, UNKNOWN } from './capture';
+
+/** What a column of a file holds. */
+export interface CsvColumn {
+  readonly index: number;
+  readonly name: string;
+  readonly kind: 'digital' | 'analog';
+  /** Factor from the column's unit to volts. */
+  readonly voltsPerUnit: number;
+}
+
+/** Where the time of a row comes from. */
+export type TimeSource =
+  /** A column of times; `places`: 3 for milliseconds; null where no unit is stated. */
+  | {
+      readonly kind: 'column';
+      readonly index: number;
+      readonly places: number | null;
+      readonly isInteger: boolean;
+    }
+  /** A column that counts samples. */
+  | { readonly kind: 'counts'; readonly index: number }
+  /** Every row is one sample. */
+  | { readonly kind: 'rows' };
+
+export interface CsvColumns {
+  readonly time: TimeSource;
+  readonly channels: readonly CsvColumn[];
+}
+
+const TIME_WORDS = new Set(
+  'time t zeit zeitpunkt zeitstempel timestamp timestamps stamp temps tiempo tempo tid tijd seconds second sec secs sekunden elapsed x'.split(
+    ' ',
+  ),
+);
+const COUNT_WORDS = new Set(
+  'sample samples sampleno samplenr samplenumber index idx nr no n number # count counts counter tick ticks row zeile punkt point points messpunkt abtastwert i num'.split(
+    ' ',
+  ),
+);
+const TIME_UNIT_PLACES: Readonly<Record<string, number>> = {
+  s: 0, sec: 0, secs: 0, second: 0, seconds: 0, sekunden: 0, sekunde: 0,
+  ms: 3, msec: 3, millis: 3, millisecond: 3, milliseconds: 3, millisekunden: 3,
+  us: 6, usec: 6, µs: 6, μs: 6, micros: 6, microsecond: 6, microseconds: 6, mikrosekunden: 6,
+  ns: 9, nsec: 9, nanos: 9, nanosecond: 9, nanoseconds: 9, nanosekunden: 9,
+  ps: 12, picoseconds: 12, fs: 15,
+}; // prettier-ignore
+const VOLT_UNITS: Readonly<Record<string, number>> = { v: 1, volt: 1, volts: 1, mv: 1e-3, millivolt: 1e-3, millivolts: 1e-3, kv: 1e3, uv: 1e-6, µv: 1e-6 }; // prettier-ignore
+
+const LEVEL_WORDS: Readonly<Record<string, number>> = {
+  '0': LOW, l: LOW, low: LOW, false: LOW, off: LOW,
+  '1': HIGH, h: HIGH, high: HIGH, true: HIGH, on: HIGH,
+  x: UNKNOWN, z: UNKNOWN, u: UNKNOWN, w: UNKNOWN, '?': UNKNOWN, '-': UNKNOWN,
+}; // prettier-ignore
+
+/** Level a cell of a digital column states; undefined where it states none. Accepts `0`, `1.0`, `H`, `low`, `TRUE`, `x`. */
+export function levelOfText(text: string): number | undefined {
+  const word = LEVEL_WORDS[text.toLowerCase()];
+  if (word !== undefined) return word;
+  if (/^[+-]?0+([.,]0*)?$/.test(text)) return LOW;
+  return /^\+?0*1([.,]0*)?$/.test(text) ? HIGH : undefined;
+}
+
+const NUMBER = /^[+-]?(\d+([.,]\d*)?|[.,]\d+)(e[+-]?\d+)?$/i;
+
+export function isNumberText(text: string): boolean {
+  return NUMBER.test(text);
+}
+
+/** Decimal places of a time unit in seconds; undefined for a word that is none. */
+export function placesOfTimeUnit(word: string): number | undefined {
+  return Object.hasOwn(TIME_UNIT_PLACES, word.toLowerCase())
+    ? TIME_UNIT_PLACES[word.toLowerCase()]
+    : undefined;
+}
+
+/** The unit at the end of a header: `t (ns)`, `Time [s]`, `Zeit_ms`, `Time/us`, or the whole of it. */
+function unitOfHeader(header: string): string {
+  const [, bracketed] = /[[({]\s*([^\])}]*?)\s*[\])}]\s*$/.exec(header) ?? [];
+  if (bracketed !== undefined) return bracketed.toLowerCase();
+  const [last] = /[^\s_/,;:.-]+$/.exec(header.trim()) ?? [''];
+  return last.toLowerCase();
+}
+
+/** The words of a header without a unit in brackets. */
+function wordsOfHeader(header: string): string[] {
+  const plain = header.replace(/[[({][^\])}]*[\])}]/g, ' ').replace(/([a-z])([A-Z])/g, '$1 $2');
+  return plain.toLowerCase().split(/[\s_/,;:.-]+/).filter((word) => word !== ''); // prettier-ignore
+}
+
+/** Units of the columns from a row of their own, or from the header. */
+function unitsOf(names: readonly string[], units: readonly string[]): string[] {
+  return names.map((name, i) => (units[i] ?? '').replace(/[[\](){}]/g, '').trim().toLowerCase() || unitOfHeader(name)); // prettier-ignore
+}
+
+function toNumber(text: string): number {
+  return text === '' ? NaN : Number(text.replace(',', '.'));
+}
+
+interface ColumnFacts {
+  /** All filled cells are numbers that never decrease. */
+  readonly isRising: boolean;
+  readonly isInteger: boolean;
+  /** Whole numbers, each one more than the one before. */
+  readonly isCounting: boolean;
+  /** All filled cells state levels. */
+  readonly isDigital: boolean;
+  readonly distinct: number;
+}
+
+function lookAt(cells: readonly string[]): ColumnFacts {
+  const filled = cells.filter((cell) => cell !== '');
+  const numbers = filled.filter(isNumberText).map(toNumber);
+  const falls = numbers.filter((value, i) => i > 0 && value < numbers[i - 1]).length;
+  const counts = numbers.filter((value, i) => i > 0 && value === numbers[i - 1] + 1).length;
+  // One damaged row among many must not hide what a column is.
+  const isAlmostAll = (count: number): boolean => count >= Math.max(1, filled.length * 0.9);
+  const isInteger = filled.length > 0 && numbers.every((value) => Number.isInteger(value));
+  return {
+    isRising: isAlmostAll(numbers.length) && falls <= numbers.length * 0.05,
+    isInteger,
+    isCounting: isInteger && numbers.length > 2 && counts >= (numbers.length - 1) * 0.95,
+    isDigital:
+      filled.length === 0 || isAlmostAll(filled.filter((cell) => levelOfText(cell) !== undefined).length),
+    distinct: new Set(filled).size,
+  };
+}
+
+/**
+ * Finds out what each column holds from its header and the first rows.
+ * `names`: header cells, all empty without a header; `units`: cells of a row of units, or empty.
+ */
+export function assignColumns(
+  names: readonly string[],
+  unitRow: readonly string[],
+  rows: readonly (readonly string[])[],
+): CsvColumns {
+  const units = unitsOf(names, unitRow);
+  const facts = names.map((_, i) => lookAt(rows.map((row) => row[i] ?? '')));
+  const time = findTime(names, units, facts);
+  const skipped = new Set<number>();
+  if (time.kind !== 'rows') skipped.add(time.index);
+  names.forEach((name, i) => {
+    if (time.kind === 'column' && isCountColumn(name, facts[i])) skipped.add(i);
+  });
+  const channels = names
+    .map((name, index): CsvColumn => {
+      const volts = VOLT_UNITS[units[index]];
+      const isAnalog = !facts[index].isDigital || (volts !== undefined && !/^v$/i.test(name));
+      return {
+        index,
+        name: name || `column ${index + 1}`,
+        kind: isAnalog ? 'analog' : 'digital',
+        voltsPerUnit: volts ?? 1,
+      };
+    })
+    .filter(({ index }) => !skipped.has(index));
+  return { time, channels };
+}
+
+function isCountColumn(name: string, facts: ColumnFacts): boolean {
+  const words = wordsOfHeader(name);
+  if (name === '') return facts.isCounting && facts.distinct > 2;
+  return (
+    words.some((word) => COUNT_WORDS.has(word)) && facts.isInteger && facts.isRising && facts.distinct > 2
+  );
+}
+
+function findTime(
+  names: readonly string[],
+  units: readonly string[],
+  facts: readonly ColumnFacts[],
+): TimeSource {
+  const places = units.map(placesOfTimeUnit);
+  const asColumn = (index: number): TimeSource => ({
+    kind: 'column', index, places: places[index] ?? null, isInteger: facts[index].isInteger,
+  }); // prettier-ignore
+  const mayBeTime = (i: number): boolean =>
+    facts[i].isRising && (facts[i].distinct > 2 || !facts[i].isDigital);
+  const words = names.map(wordsOfHeader);
+  const isTimeName = (i: number): boolean =>
+    words[i].some((word) => TIME_WORDS.has(word)) ||
+    (places[i] !== undefined && (words[i].length <= 2 || names[i].includes('(') || names[i].includes('[')));
+  const named = names.findIndex((name, i) => isTimeName(i) && mayBeTime(i) && !isOnlyCount(words[i]));
+  if (named >= 0) return asColumn(named);
+  const counted = names.findIndex((name, i) => name !== '' && isCountColumn(name, facts[i]));
+  if (counted >= 0) return { kind: 'counts', index: counted };
+  if (!mayBeTime(0)) {
+    // A header that says time is believed even where the rows do not rise: the reader then tells where they do not.
+    const claimed = names.findIndex((_, i) =>
+      words[i].some((word) => TIME_WORDS.has(word) && word !== 'x' && word !== 't'),
+    );
+    return claimed >= 0 && !facts[claimed].isDigital ? asColumn(claimed) : { kind: 'rows' };
+  }
+  if (facts[0].isCounting && names.length > 2 && mayBeTime(1) && !facts[1].isDigital) return asColumn(1);
+  return facts[0].isCounting ? { kind: 'counts', index: 0 } : asColumn(0);
+}
+
+/** `Sample` alone counts; `Sample time` is a time. */
+function isOnlyCount(words: readonly string[]): boolean {
+  return words.length > 0 && words.every((word) => COUNT_WORDS.has(word));
+}

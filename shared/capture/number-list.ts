@@ -1,0 +1,77 @@
+const FIRST_CHUNK = 1024;
+const LARGEST_CHUNK = 65536;
+
+type NumberArray = Float64Array | Float32Array | Uint8Array;
+
+/** A growing list of numbers kept as a list of chunks: it never copies what it already holds until `toArray`. */
+export class NumberList<A extends NumberArray> {
+  private full: A[] = [];
+  private current: A;
+  private used = 0;
+  private before = 0;
+
+  constructor(private readonly allocate: (length: number) => A) {
+    this.current = allocate(0);
+  }
+
+  get length(): number {
+    return this.before + this.used;
+  }
+
+  /** Adds a number. True: a chunk is full now, a good moment for checks that should be rare. */
+  push(value: number): boolean {
+    if (this.used === this.current.length) this.grow();
+    this.current[this.used++] = value;
+    return this.used === this.current.length;
+  }
+
+  replaceLast(value: number): void {
+    this.current[this.used - 1] = value;
+  }
+
+  /** Calls `visit` with each chunk and the count of numbers used in it. Chunks may be changed in place. */
+  forEachChunk(visit: (chunk: A, count: number) => void): void {
+    for (const chunk of this.full) visit(chunk, chunk.length);
+    visit(this.current, this.used);
+  }
+
+  /** All numbers as one array. Empties the list: each chunk is let go as soon as it is copied. */
+  toArray(): A {
+    const all = this.allocate(this.length);
+    let at = 0;
+    this.full.reverse();
+    for (let chunk = this.full.pop(); chunk !== undefined; chunk = this.full.pop()) {
+      all.set(chunk, at);
+      at += chunk.length;
+    }
+    all.set(this.current.subarray(0, this.used), at);
+    this.clear();
+    return all;
+  }
+
+  clear(): void {
+    this.full = [];
+    this.current = this.allocate(0);
+    this.used = 0;
+    this.before = 0;
+  }
+
+  private grow(): void {
+    if (this.used > 0) this.full.push(this.current);
+    this.before += this.used;
+    this.current = this.allocate(Math.min(LARGEST_CHUNK, Math.max(FIRST_CHUNK, this.before)));
+    this.used = 0;
+  }
+}
+
+export function float64List(): NumberList<Float64Array> {
+  return new NumberList((length) => new Float64Array(length));
+}
+
+export function float32List(): NumberList<Float32Array> {
+  return new NumberList((length) => new Float32Array(length));
+}
+
+export function uint8List(): NumberList<Uint8Array> {
+  return new NumberList((length) => new Uint8Array(length));
+}

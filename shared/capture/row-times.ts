@@ -1,0 +1,101 @@
+import type { SampleTimes } from './capture';
+import { float64List } from './number-list';
+
+/** Rows that deviate less than this from the usual interval count as evenly spaced. */
+const EVEN_SHARE = 0.01;
+/** Rounding of printed times moves a row by up to one unit either way. */
+const EVEN_UNITS = 1.5;
+
+/** Spacing of the rows of a file: is there a row per sample, and at which interval? */
+export class RowSpacing {
+  rows = 0;
+  private unchangedRows = 0;
+  private evenRows = 0;
+  private evenSum = 0;
+  private last = 0;
+  private early: number[] = [];
+  private usual = 0;
+
+  /** A row at `ticks`. `isUnchanged`: no channel changed with it. */
+  take(ticks: number, isUnchanged: boolean): void {
+    this.rows += 1;
+    if (isUnchanged) this.unchangedRows += 1;
+    if (this.rows === 1) {
+      this.last = ticks;
+      return;
+    }
+    const delta = ticks - this.last;
+    this.last = ticks;
+    if (this.early.length < 64) {
+      this.early.push(delta);
+      if (this.early.length === 64) this.settle();
+    } else if (this.isEven(delta)) {
+      this.evenRows += 1;
+      this.evenSum += delta;
+    }
+  }
+
+  scale(scale: (time: number) => number): void {
+    this.early = this.early.map(scale);
+    this.last = scale(this.last);
+    this.usual = scale(this.usual);
+    this.evenSum = scale(this.evenSum);
+  }
+
+  /** Interval of the samples in ticks; null where the rows are changes. */
+  sampleInterval(hasAnalog: boolean): number | null {
+    if (this.usual === 0) this.settle();
+    const spacings = this.rows - 1;
+    if (spacings < 2 || this.evenRows === 0) return null;
+    const even = this.evenRows / spacings;
+    const unchanged = this.unchangedRows / this.rows;
+    const isSampled = even >= 0.995 || (even >= 0.5 && (unchanged >= 0.3 || hasAnalog));
+    return isSampled ? this.evenSum / this.evenRows : null;
+  }
+
+  /** All rows stand at the interval. */
+  get isUniform(): boolean {
+    return this.evenRows === this.rows - 1;
+  }
+
+  private settle(): void {
+    const sorted = [...this.early].sort((a, b) => a - b);
+    this.usual = sorted[sorted.length >> 1] ?? 0;
+    for (const delta of this.early) {
+      if (!this.isEven(delta)) continue;
+      this.evenRows += 1;
+      this.evenSum += delta;
+    }
+  }
+
+  private isEven(delta: number): boolean {
+    return delta > 0 && Math.abs(delta - this.usual) <= Math.max(EVEN_UNITS, this.usual * EVEN_SHARE);
+  }
+}
+
+/** Times of all rows, kept only for files with analog channels. */
+export class RowTimes {
+  private readonly times = float64List();
+
+  get length(): number {
+    return this.times.length;
+  }
+
+  push(ticks: number): void {
+    this.times.push(ticks);
+  }
+
+  scale(scale: (time: number) => number): void {
+    this.times.forEachChunk((chunk, count) => {
+      for (let i = 0; i < count; i++) chunk[i] = scale(chunk[i]);
+    });
+  }
+
+  /** `stepTicks`: the interval where all rows stand at it, else null. */
+  finish(stepTicks: number | null): SampleTimes {
+    if (stepTicks === null) return { kind: 'listed', ticks: this.times.toArray() };
+    const count = this.times.length;
+    this.times.clear();
+    return { kind: 'uniform', startTicks: 0, stepTicks, count };
+  }
+}

@@ -1,0 +1,44 @@
+/** Windows-1252 where it differs from Latin-1 does not matter for names: only µ (B5) and letters with accents occur. */
+function decodeLatin1(bytes: Uint8Array): string {
+  let text = '';
+  for (const byte of bytes) text += String.fromCharCode(byte);
+  return text;
+}
+
+/**
+ * Bytes as text: UTF-8 where they are valid UTF-8, else Latin-1. Meant for short pieces (names, headers, messages).
+ * Source: RFC 3629 section 4 (overlong forms, surrogates and values above 10FFFFh are invalid).
+ */
+export function decodeText(bytes: Uint8Array): string {
+  let text = '';
+  for (let i = 0; i < bytes.length;) {
+    const first = bytes[i];
+    if (first < 0x80) {
+      text += String.fromCharCode(first);
+      i += 1;
+      continue;
+    }
+    const length = first >= 0xf0 ? 4 : first >= 0xe0 ? 3 : 2;
+    if (first < 0xc2 || first > 0xf4 || i + length > bytes.length) return decodeLatin1(bytes);
+    let code = first & (0x7f >> length);
+    for (let k = 1; k < length; k++) {
+      const next = bytes[i + k];
+      if ((next & 0xc0) !== 0x80) return decodeLatin1(bytes);
+      code = (code << 6) | (next & 0x3f);
+    }
+    const isOverlong = length > 2 && code < (length === 3 ? 0x800 : 0x10000);
+    if (isOverlong || (code >= 0xd800 && code <= 0xdfff) || code > 0x10ffff) return decodeLatin1(bytes);
+    text += String.fromCodePoint(code);
+    i += length;
+  }
+  return text;
+}
+
+/** A piece of a file for a message: printable, at most 40 characters. */
+export function quoteForMessage(bytes: Uint8Array): string {
+  const text = decodeText(bytes.subarray(0, 60));
+  const printable = Array.from(text, (c) => (c < ' ' || (c >= '\u007f' && c < '\u00a0') ? '·' : c));
+  return bytes.length > 40 || printable.length > 40
+    ? `“${printable.slice(0, 40).join('')}…”`
+    : `“${printable.join('')}”`;
+}
