@@ -1,0 +1,15 @@
+import { defineConfig } from 'vitest/config';
+
+/** Everything but the client (`ng test`) and the browser (`playwright test`). */
+export default defineConfig({
+  test: {
+    include: ['shared/**/*.spec.ts', 'server/**/*.spec.ts', 'spec/**/*.spec.ts', 'samples/**/*.spec.ts'],
+    exclude: ['spec/browser/**', '**/node_modules/**'],
+    testTimeout: 30_000,
+    pool: 'forks',
+    maxWorkers: 2,
+  },
+  esbuild: {
+    tsconfigRaw: { compilerOptions: { experimentalDecorators: true, useDefineForClassFields: false } },
+  },
+});
