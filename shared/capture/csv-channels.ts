@@ -21,6 +21,7 @@ export interface ColumnSink {
 export class CsvChannels {
   readonly sinks: readonly ColumnSink[];
   readonly hasAnalog: boolean;
+  readonly digital: readonly DigitalRecorder[];
   private readonly rowTimes = new RowTimes();
   private lastAnalogTime = -1;
 
@@ -32,6 +33,7 @@ export class CsvChannels {
       analog: column.kind === 'analog' ? float32List() : null,
       value: NaN,
     }));
+    this.digital = this.sinks.flatMap(({ digital }) => (digital === null ? [] : [digital]));
     this.hasAnalog = this.sinks.some(({ analog }) => analog !== null);
   }
 

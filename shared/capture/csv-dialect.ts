@@ -8,7 +8,9 @@ import { findStatedInterval } from './stated-rate';
 import { decodeText, quoteForMessage } from './text-bytes';
 
 const SEPARATORS = [',', ';', '\t', '|'];
-const MOST_RECORDS = 4000;
+/** Records by which the separator is chosen, and those by which columns are judged. */
+const FEW_RECORDS = 300;
+const MANY_RECORDS = 1200;
 /** No instrument has that many channels; a spreadsheet that lost its line breaks has. */
 const MOST_COLUMNS = 4096;
 
@@ -63,8 +65,8 @@ function isComment(record: CsvRecord, separator: string): boolean {
 }
 
 /** The field count most rows of data have, and how many have it. */
-function measure(separator: string, bytes: Uint8Array): Reading {
-  const records = splitRecords(bytes, separator, MOST_RECORDS);
+function measure(separator: string, bytes: Uint8Array, most: number): Reading {
+  const records = splitRecords(bytes, separator, most);
   const counts = new Map<number, number>();
   for (const { cells } of records) {
     if (cells.length <= MOST_COLUMNS && isDataRow(cells)) {
@@ -89,12 +91,12 @@ function measure(separator: string, bytes: Uint8Array): Reading {
 export function findDialect(bytes: Uint8Array): CsvDialect {
   const [, declared] = /^sep=(.)\r?\n/i.exec(String.fromCharCode(...bytes.subarray(0, 8))) ?? [];
   const candidates = declared === undefined ? SEPARATORS : [declared];
-  const readings = candidates.map((separator) => measure(separator, bytes));
+  const readings = candidates.map((separator) => measure(separator, bytes, FEW_RECORDS));
   const score = ({ rowCount, fieldCount }: Reading): number =>
     fieldCount > 1 ? rowCount * 1000 + fieldCount : rowCount;
   const best = readings.reduce((a, b) => (score(b) > score(a) ? b : a));
   refuseUnreadable(best, readings, bytes);
-  return describe(best, bytes);
+  return describe(measure(best.separator, bytes, MANY_RECORDS), bytes);
 }
 
 function refuseUnreadable(best: Reading, readings: readonly Reading[], bytes: Uint8Array): void {

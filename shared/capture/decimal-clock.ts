@@ -6,6 +6,13 @@ const LARGEST = Number.MAX_SAFE_INTEGER;
 /** Finest tick, in decimal places of a second, that may be given up where the times span too much for it (house). */
 const COARSEST_PLACES = 9;
 
+/** `digits · factor / divisor − origin` are ticks; where that is no whole number the tick is too coarse for the time. */
+export interface LinearScale {
+  readonly factor: number;
+  readonly divisor: number;
+  readonly origin: number;
+}
+
 /**
  * Turns times written as decimal numbers into ticks since the first of them. A tick is the last decimal place that any time has
  * needed so far; a time with more places makes the tick finer, and the owner scales what it has stored.
@@ -42,6 +49,20 @@ export class DecimalClock {
   /** The row that has this time is taken. */
   accept(ticks: number): void {
     this.latest = ticks;
+  }
+
+  /**
+   * How times of at most `digits` digits, `scale` of them after the point, become ticks: digits · factor / divisor − origin. Null
+   * where that may not be exact.
+   */
+  linear(digits: number, scale: number): LinearScale | null {
+    const shift = this.places - scale;
+    if (digits + Math.abs(shift) > 15 || Math.abs(this.originNumber) > LARGEST) return null;
+    return {
+      factor: 10 ** Math.max(0, shift),
+      divisor: 10 ** Math.max(0, -shift),
+      origin: this.originNumber,
+    };
   }
 
   timeBase(unitNumerator: bigint, unitDenominator: bigint): TimeBase {

@@ -47,6 +47,15 @@ export class DigitalRecorder {
     this.level = level;
   }
 
+  /** Only for a channel too busy to be kept: `count` changes, each at its own time, the last at `time` to `level`. */
+  countBusyChanges(count: number, time: number, level: number): void {
+    this.commit();
+    this.edgeCount += count - 1;
+    this.committedLevel = count === 1 ? this.level : 1 - level;
+    this.pendingTime = time;
+    this.level = level;
+  }
+
   /** Multiplies all times (a finer unit was needed) or divides them (`factor` < 1), rounding to whole numbers. */
   scaleTimes(scale: (time: number) => number): void {
     this.times.forEachChunk((chunk, count) => {

@@ -63,10 +63,10 @@ export class CaptureReader {
 
   private start(): FormatReader {
     const set = findCharacterSet(this.head);
-    let sniffed = this.head;
+    let sniffed = this.head.subarray(0, SNIFFED_BYTES);
     if (set !== 'bytes') {
       this.transcoder = new Utf16Transcoder(set === 'utf-16le');
-      sniffed = new Utf16Transcoder(set === 'utf-16le').convert(this.head).slice();
+      sniffed = new Utf16Transcoder(set === 'utf-16le').convert(sniffed).slice();
     }
     const reader = this.makeReader(findKind(sniffed));
     this.reader = reader;

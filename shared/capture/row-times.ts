@@ -6,6 +6,9 @@ const EVEN_SHARE = 0.01;
 /** Rounding of printed times moves a row by up to one unit either way. */
 const EVEN_UNITS = 1.5;
 
+/** The usual interval is the median of the first spacings. */
+const EARLY_ROWS = 64;
+
 /** Spacing of the rows of a file: is there a row per sample, and at which interval? */
 export class RowSpacing {
   rows = 0;
@@ -14,7 +17,8 @@ export class RowSpacing {
   private evenSum = 0;
   private last = 0;
   private early: number[] = [];
-  private usual = 0;
+  /** The interval most rows have, in ticks; 0 until enough rows are seen. */
+  usual = 0;
 
   /** A row at `ticks`. `isUnchanged`: no channel changed with it. */
   take(ticks: number, isUnchanged: boolean): void {
@@ -26,13 +30,39 @@ export class RowSpacing {
     }
     const delta = ticks - this.last;
     this.last = ticks;
-    if (this.early.length < 64) {
+    if (this.early.length < EARLY_ROWS) {
       this.early.push(delta);
-      if (this.early.length === 64) this.settle();
+      if (this.early.length === EARLY_ROWS) this.settle();
     } else if (this.isEven(delta)) {
       this.evenRows += 1;
       this.evenSum += delta;
     }
+  }
+
+  /** The interval is known: `usual` may be relied on. */
+  get isSettled(): boolean {
+    return this.early.length >= EARLY_ROWS;
+  }
+
+  /** `count` spacings equal to `usual`; their rows are told to `addUnchanged`. */
+  takeUsual(count: number): void {
+    if (this.usual === 0) return;
+    this.evenRows += count;
+    this.evenSum += count * this.usual;
+  }
+
+  /** A spacing that differs from `usual`; its row is told to `addUnchanged`. */
+  takeUnusual(delta: number): void {
+    if (!this.isEven(delta)) return;
+    this.evenRows += 1;
+    this.evenSum += delta;
+  }
+
+  /** Rows without any change whose spacings were told before; the last stands at `ticks`. */
+  addUnchanged(count: number, ticks: number): void {
+    this.rows += count;
+    this.unchangedRows += count;
+    this.last = ticks;
   }
 
   scale(scale: (time: number) => number): void {

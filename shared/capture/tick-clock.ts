@@ -59,6 +59,16 @@ export class TickClock {
     return this.latest;
   }
 
+  /** The stamp of tick 0 while ticks are units and stamps small numbers: `stamp − narrowOrigin` are ticks then. Else null. */
+  get narrowOrigin(): number | null {
+    return this.isStarted && this.wide === null && this.origin <= LARGEST ? this.origin : null;
+  }
+
+  /** For a reader that does the arithmetic of `narrowOrigin` itself. */
+  moveTo(ticks: number): void {
+    this.latest = ticks;
+  }
+
   /** Ticks of the end of the record, after the last stamp. */
   endTicks(): number {
     if (this.latest > LARGEST) this.resolve();

@@ -6,6 +6,7 @@ import { DefectList } from './defect-list';
 import type { DigitalRecorder, RecorderClock } from './digital-recorder';
 import { BUSY_SPACING_S } from './digital-recorder';
 import type { FormatReader, KeepRule } from './format-reader';
+import { PlainChanges } from './plain-changes';
 import { decodeText, quoteForMessage } from './text-bytes';
 import { TickClock } from './tick-clock';
 import { VcdGaps } from './vcd-gaps';
@@ -73,7 +74,13 @@ export class VcdReader implements FormatReader {
   private doubtful: Map<DigitalRecorder, number> | null = null;
   private isStopped = false;
 
-  constructor(isKept: KeepRule) {
+  private readonly plain: PlainChanges;
+
+  constructor(
+    isKept: KeepRule,
+    /** False: every word is looked at by itself; slower, and what the faster way is checked against. */
+    private readonly isFast = true,
+  ) {
     this.variables = new VcdVariables(this.recorderClock, isKept);
     this.header = new VcdHeader(this.variables, this.defects);
     const { variables, gaps } = this;
@@ -82,6 +89,7 @@ export class VcdReader implements FormatReader {
       yield* variables.analog;
       yield gaps;
     });
+    this.plain = new PlainChanges(variables, this.clock);
   }
 
   push(chunk: Uint8Array): void {
@@ -180,6 +188,7 @@ export class VcdReader implements FormatReader {
   /** Reads whole words; returns how many bytes are done with. `isWhole`: the last word ends with the bytes; `isFinal`: so does the file. */
   private read(bytes: Uint8Array, isWhole: boolean, isFinal: boolean): number {
     const end = bytes.length;
+    const view = new DataView(bytes.buffer, bytes.byteOffset, end);
     let i = 0;
     while (i < end && !this.isStopped) {
       const c = bytes[i];
@@ -196,6 +205,13 @@ export class VcdReader implements FormatReader {
         continue;
       }
       this.isAfterReturn = false;
+      if (c === HASH && this.isPlain()) {
+        const stop = this.takePlain(bytes, view, i);
+        if (stop > i) {
+          i = stop;
+          continue;
+        }
+      }
       let j = i + 1;
       while (j < end && bytes[j] > SPACE) j += 1;
       if (j === end && !isWhole) break;
@@ -205,6 +221,29 @@ export class VcdReader implements FormatReader {
     const done = this.isStopped ? end : i;
     this.bytesBefore += done;
     return done;
+  }
+
+  /** Nothing is under way that a plain stamp or change would mean something else for. */
+  private isPlain(): boolean {
+    return (
+      this.isFast &&
+      this.isInBody &&
+      this.awaited === NO_CODE &&
+      this.command === null &&
+      this.doubtful === null &&
+      !this.isOff
+    );
+  }
+
+  private takePlain(bytes: Uint8Array, view: DataView, start: number): number {
+    const { plain } = this;
+    const stop = plain.take(bytes, view, start);
+    if (plain.lines > 0) {
+      this.line += plain.lines;
+      this.lineStart = this.bytesBefore + plain.lineStart;
+    }
+    if (plain.hasChanges) this.hasChanges = true;
+    return stop;
   }
 
   private takeWord(bytes: Uint8Array, start: number, end: number, isLast: boolean): void {

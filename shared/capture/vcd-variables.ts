@@ -34,9 +34,11 @@ export class VcdVariables {
   readonly digital: DigitalRecorder[] = [];
   readonly analog: SteppedRecorder[] = [];
   readonly list: VcdVariable[] = [];
+  /** The recorders of variables of one bit, as in `list`; null for all other variables. */
+  readonly oneBit: (DigitalRecorder | null)[] = [];
   private readonly indexByCode = new Map<string, number>();
   /** Index + 1 by the characters of codes of up to three; 0 where there is none. */
-  private readonly indexByShortCode = new Int32Array(95 * 95 * 95);
+  readonly indexByShortCode = new Int32Array(95 * 95 * 95);
   private nameCharacters = 0;
 
   constructor(
@@ -75,7 +77,9 @@ export class VcdVariables {
 
   private addVariable(declaration: VcdDeclaration): void {
     const index = this.list.length;
-    this.list.push(this.makeVariable(declaration));
+    const variable = this.makeVariable(declaration);
+    this.list.push(variable);
+    this.oneBit.push(variable.kind === 'bits' && variable.size === 1 ? variable.bits[0] : null);
     this.indexByCode.set(declaration.code, index);
     if (declaration.code.length > 3) return;
     let key = 0;
