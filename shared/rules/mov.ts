@@ -1,0 +1,197 @@
+import type { DeclaredSpan } from '../line/line-map';
+import { toTicks } from '../time/time-base';
+import type { Place, RuleContext, RuleOutcome } from './rule-context';
+import { cap, figure, notShown, plural, worstVerdict } from './rule-context';
+import { judgeAtMost, judgeCount } from './verdict';
+
+/** Largest step a protocol can say per axis: 127 or 128 counts, twice that in five-byte packets. */
+const LIMIT_COUNTS = 127;
+/** Steps this large of opposite sign in neighbouring packets are taken for a wrap. Source: rules.md 7. */
+const WRAP_STEP = 100;
+const MM_PER_INCH = 25.4;
+
+/** MOV-1: share of moving packets with an axis at its numeric limit, in percent. */
+export function judgeSaturation(context: RuleContext): RuleOutcome {
+  const { packets, protocol } = context.decoded;
+  const ceiling = protocol === 'five-byte' ? 2 * LIMIT_COUNTS : LIMIT_COUNTS;
+  let moving = 0;
+  let saturated = 0;
+  for (let p = 0; p < packets.count; p++) {
+    if (packets.dx[p] === 0 && packets.dy[p] === 0) continue;
+    moving += 1;
+    if (Math.abs(packets.dx[p]) >= ceiling || Math.abs(packets.dy[p]) >= ceiling) saturated += 1;
+  }
+  const least = context.setting.minimumCount ?? 100;
+  if (moving < least) return notShown(`${plural(moving, 'moving packet')}; ${least} are needed`);
+  const share = (100 * saturated) / moving;
+  return {
+    verdict: judgeAtMost(share, 0, context.limit, context.setting.decision),
+    n: moving,
+    measured: share,
+    uncertainty: 0,
+    uncertaintyKind: 'bound',
+    reason: `${saturated} of ${plural(moving, 'moving packet')} are at the numeric limit`,
+  };
+}
+
+/** MOV-2: suspected wrap of a counter. */
+export function judgeWrap(context: RuleContext): RuleOutcome {
+  const { packets, characters } = context.decoded;
+  if (packets.count < 2) return notShown('fewer than two packets in the capture');
+  const places: Place[] = [];
+  for (let p = 1; p < packets.count; p++) {
+    const isWrap = (a: number, b: number): boolean =>
+      Math.abs(a) >= WRAP_STEP && Math.abs(b) >= WRAP_STEP && Math.sign(a) !== Math.sign(b);
+    if (!isWrap(packets.dx[p - 1], packets.dx[p]) && !isWrap(packets.dy[p - 1], packets.dy[p])) continue;
+    const from = characters.startTicks[packets.firstCharacter[p - 1]];
+    const to = characters.startTicks[packets.firstCharacter[p]];
+    if (to - from > 1.2 * packets.characterCount[p - 1] * context.characterTicks) continue;
+    places.push({
+      verdict: 'violation',
+      startTicks: from,
+      endTicks: characters.endTicks[packets.firstCharacter[p] + packets.characterCount[p] - 1],
+      message: `Steps of (${packets.dx[p - 1]}, ${packets.dy[p - 1]}) and (${packets.dx[p]}, ${packets.dy[p]}) follow each other: a counter may have wrapped`,
+    });
+  }
+  return {
+    verdict: judgeCount(places.length, 0, context.limit),
+    n: packets.count,
+    measured: places.length,
+    uncertainty: 0,
+    uncertaintyKind: 'bound',
+    reason: `${plural(places.length, 'suspected wrap')} in ${plural(packets.count, 'packet')}`,
+    findings: cap(places.map((place) => context.finding(place))),
+  };
+}
+
+/** Movement summed over a declared span. */
+interface SpanSum {
+  readonly span: DeclaredSpan;
+  readonly startTicks: number;
+  readonly endTicks: number;
+  readonly dx: number;
+  readonly dy: number;
+  readonly pathCounts: number;
+  readonly packets: number;
+}
+
+function sumSpans(context: RuleContext, kind: DeclaredSpan['kind']): SpanSum[] {
+  const { packets, characters, map, capture } = context.decoded;
+  return (map.declared ?? [])
+    .filter((span) => span.kind === kind)
+    .map((span) => {
+      const startTicks = toTicks(capture.timeBase, span.startS);
+      const endTicks = toTicks(capture.timeBase, span.endS);
+      let dx = 0;
+      let dy = 0;
+      let pathCounts = 0;
+      let count = 0;
+      for (let p = 0; p < packets.count; p++) {
+        const at = characters.startTicks[packets.firstCharacter[p]];
+        if (at < startTicks || at >= endTicks) continue;
+        dx += packets.dx[p];
+        dy += packets.dy[p];
+        pathCounts += Math.hypot(packets.dx[p], packets.dy[p]);
+        count += 1;
+      }
+      return { span, startTicks, endTicks, dx, dy, pathCounts, packets: count };
+    });
+}
+
+/** Judges each declared span by one figure. */
+function judgeSpans(
+  context: RuleContext,
+  kind: DeclaredSpan['kind'],
+  lack: string,
+  measure: (sum: SpanSum) => { value: number; uncertainty: number; message: string } | undefined,
+): RuleOutcome {
+  const places: Place[] = [];
+  for (const sum of sumSpans(context, kind)) {
+    const measured = measure(sum);
+    if (measured === undefined) continue;
+    places.push({
+      verdict: judgeAtMost(
+        Math.abs(measured.value),
+        measured.uncertainty,
+        context.limit,
+        context.setting.decision,
+      ),
+      startTicks: sum.startTicks,
+      endTicks: sum.endTicks,
+      measured: measured.value,
+      uncertainty: measured.uncertainty,
+      message: measured.message,
+    });
+  }
+  if (places.length === 0) return notShown(lack);
+  const worst = places.reduce((a, b) => (Math.abs(b.measured!) > Math.abs(a.measured!) ? b : a));
+  return {
+    verdict: worstVerdict(places, 'not-shown'),
+    n: places.length,
+    measured: worst.measured,
+    uncertainty: worst.uncertainty,
+    uncertaintyKind: 'bound',
+    reason: worst.message,
+    findings: cap(places.map((place) => context.finding(place))),
+  };
+}
+
+/** MOV-3: counts over a declared stroke against the declared resolution, in percent. */
+export function judgeResolution(context: RuleContext): RuleOutcome {
+  const { countsPerInch } = context.decoded.map;
+  if (countsPerInch === undefined) return notShown('the device has no declared counts per inch');
+  return judgeSpans(context, 'stroke', 'no stroke of a known length is declared', ({ span, dx, dy }) => {
+    if (span.lengthMm === undefined || span.axis === undefined) return undefined;
+    const counts = Math.abs(span.axis === 'x' ? dx : dy);
+    const due = (span.lengthMm / MM_PER_INCH) * countsPerInch;
+    const value = 100 * (counts / due - 1);
+    const uncertainty = (100 * (span.lengthUncertaintyMm ?? 0)) / span.lengthMm + 100 / due;
+    return {
+      value,
+      uncertainty,
+      message: `${counts} counts where ${figure(due, 0)} are due: ${figure(value, 1)} %`,
+    };
+  });
+}
+
+/** MOV-4: what is left of a closed path, in percent of its length. */
+export function judgeClosure(context: RuleContext): RuleOutcome {
+  return judgeSpans(context, 'closed-path', 'no closed path is declared', ({ dx, dy, pathCounts }) => {
+    if (pathCounts === 0) return undefined;
+    const value = (100 * Math.hypot(dx, dy)) / pathCounts;
+    return {
+      value,
+      uncertainty: 100 / pathCounts,
+      message: `(${dx}, ${dy}) counts are left of a path of ${figure(pathCounts, 0)}`,
+    };
+  });
+}
+
+/** MOV-5: counts reported while the device is declared at rest. */
+export function judgeRest(context: RuleContext): RuleOutcome {
+  return judgeSpans(
+    context,
+    'rest',
+    'no rest is declared: mark a stretch of 60 s or more',
+    ({ pathCounts, packets }) => ({
+      value: pathCounts,
+      uncertainty: 0,
+      message: `${figure(pathCounts, 0)} counts in ${plural(packets, 'packet')} at rest`,
+    }),
+  );
+}
+
+/** MOV-6: movement across a declared stroke, in percent of the movement along it. */
+export function judgeCrossAxis(context: RuleContext): RuleOutcome {
+  return judgeSpans(context, 'stroke', 'no stroke with an axis is declared', ({ span, dx, dy }) => {
+    if (span.axis === undefined) return undefined;
+    const along = Math.abs(span.axis === 'x' ? dx : dy);
+    const across = Math.abs(span.axis === 'x' ? dy : dx);
+    if (along === 0) return undefined;
+    return {
+      value: (100 * across) / along,
+      uncertainty: 100 / along,
+      message: `${across} counts across, ${along} along`,
+    };
+  });
+}

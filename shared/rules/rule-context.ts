@@ -1,0 +1,188 @@
+import { bitsAfterStart, elementsPerCharacter } from '../characters/framing';
+import type { Decoded } from '../decode/decoded';
+import { DEFAULT_TIME_ACCURACY_PPM } from '../line/line-map';
+import type { LevelTrace } from '../line/level-trace';
+import { isMFamily } from '../packets/packet-lengths';
+import type { UncertaintyKind } from '../time/measurement';
+import { secondsPerTick, ticksPerSecond } from '../time/time-base';
+import type { Finding, Verdict } from './finding';
+import type { RuleDefinition } from './rule-definition';
+import type { RuleSetting, Severity } from './rulebook';
+import type { Judgement } from './verdict';
+import { worseOf } from './verdict';
+
+/** Findings kept per rule: more help nobody; the counts stay exact. */
+export const MOST_FINDINGS = 1000;
+
+/** What a rule came to. */
+export interface RuleOutcome {
+  readonly verdict: Verdict;
+  readonly n: number;
+  readonly measured?: number;
+  readonly uncertainty?: number;
+  readonly uncertaintyKind?: UncertaintyKind;
+  /** The limit compared with, where it is not the setting's. */
+  readonly limit?: number;
+  /** Severity of what was crossed, where a rule has two limits. */
+  readonly severity?: Severity;
+  readonly reason: string;
+  readonly findings?: readonly Finding[];
+}
+
+/** One judged place before it becomes a `Finding`. */
+export interface Place {
+  readonly verdict: Finding['verdict'];
+  readonly startTicks: number;
+  readonly endTicks: number;
+  readonly measured?: number;
+  readonly uncertainty?: number;
+  readonly uncertaintyKind?: UncertaintyKind;
+  readonly limit?: number;
+  readonly severity?: Severity;
+  readonly message: string;
+}
+
+/** Everything a rule may look at, with the arithmetic all of them share. */
+export class RuleContext {
+  readonly perSecond: number;
+  readonly tickS: number;
+  /** One element at the nominal rate, ticks; 0 without characters. */
+  readonly nominalBitTicks: number;
+  /** One element at the measured rate, ticks; 0 without characters. */
+  readonly bitTicks: number;
+  /** One character at the nominal rate, ticks. */
+  readonly characterTicks: number;
+  private readonly ppm: number;
+  private readonly skewTicks: number;
+
+  constructor(
+    readonly decoded: Decoded,
+    readonly setting: RuleSetting,
+    readonly definition: RuleDefinition,
+    /** Settings of the other rules: some limits are shared. */
+    readonly settings: ReadonlyMap<string, RuleSetting>,
+  ) {
+    const { framing, capture, map } = decoded;
+    this.perSecond = ticksPerSecond(capture.timeBase);
+    this.tickS = secondsPerTick(capture.timeBase);
+    this.nominalBitTicks = framing === null ? 0 : this.perSecond / framing.nominalBitRate;
+    this.bitTicks = framing === null ? 0 : this.perSecond / framing.bitRate;
+    this.characterTicks = framing === null ? 0 : this.nominalBitTicks * elementsPerCharacter(framing);
+    this.ppm = map.timeAccuracyPpm ?? DEFAULT_TIME_ACCURACY_PPM;
+    this.skewTicks = (map.thresholdSkewS ?? 0) * this.perSecond;
+  }
+
+  get limit(): number {
+    return this.setting.limit ?? 0;
+  }
+
+  get data(): LevelTrace | undefined {
+    return this.decoded.lines.data?.trace;
+  }
+
+  get rts(): LevelTrace | undefined {
+    return this.decoded.lines.rts?.trace;
+  }
+
+  get bitsAfterStart(): number {
+    return this.decoded.framing === null ? 0 : bitsAfterStart(this.decoded.framing);
+  }
+
+  /** Protocols of the M family; true also where no protocol was found, since nothing speaks against it. */
+  get isMFamily(): boolean {
+    return this.decoded.protocol === null || isMFamily(this.decoded.protocol);
+  }
+
+  /**
+   * Bound of the error of a difference of two edges, in ticks: T (or the errors of two interpolated edges), the accuracy of the
+   * time base, the stated skew. Source: rules.md 1, uncertainty of time.
+   */
+  differenceUncertainty(differenceTicks: number, isSameLine = false): number {
+    const edges = this.edgeUncertainty ?? this.decoded.resolutionTicks;
+    return edges + this.ppm * 1e-6 * Math.abs(differenceTicks) + (isSameLine ? 0 : this.skewTicks);
+  }
+
+  /** Accuracy of the time base as a share. */
+  get timeAccuracy(): number {
+    return this.ppm * 1e-6;
+  }
+
+  /** Twice the largest error of an interpolated edge; undefined for digital lines. */
+  private get edgeUncertainty(): number | undefined {
+    const list = this.data?.edgeUncertainty;
+    if (list === undefined || list.length === 0) return undefined;
+    let worst = 0;
+    for (const value of list) if (value > worst) worst = value;
+    return 2 * worst;
+  }
+
+  ms(ticks: number): number {
+    return ticks * this.tickS * 1e3;
+  }
+
+  /** Ticks of a limit in ms; whole where the limit is a whole number of ticks, so that comparisons stay exact. */
+  ticksOfMs(ms: number): number {
+    const ticks = (ms / 1e3) * this.perSecond;
+    const whole = Math.round(ticks);
+    return Math.abs(ticks - whole) < 1e-6 * Math.max(1, whole) ? whole : ticks;
+  }
+
+  finding(place: Place): Finding {
+    return {
+      rule: this.definition.id,
+      verdict: place.verdict,
+      severity: place.severity ?? this.setting.severity,
+      startTicks: place.startTicks,
+      endTicks: place.endTicks,
+      measured: place.measured ?? null,
+      uncertainty: place.uncertainty ?? null,
+      uncertaintyKind: place.uncertaintyKind ?? (place.uncertainty === undefined ? null : 'bound'),
+      limit: place.limit ?? (place.measured === undefined ? null : this.setting.limit),
+      unit: place.measured === undefined ? null : this.definition.unit,
+      message: place.message,
+    };
+  }
+
+  /** Characters of the capture that are neither damaged nor breaks. */
+  countWholeCharacters(): number {
+    const { errors, count } = this.decoded.characters;
+    let whole = 0;
+    for (let i = 0; i < count; i++) if (errors[i] === 0) whole += 1;
+    return whole;
+  }
+}
+
+export function notShown(reason: string): RuleOutcome {
+  return { verdict: 'not-shown', n: 0, reason };
+}
+
+export function notApplicable(reason: string): RuleOutcome {
+  return { verdict: 'not-applicable', n: 0, reason };
+}
+
+/** The worst verdict of places, `fallback` without any. */
+export function worstVerdict(
+  places: readonly { readonly verdict: Verdict | Judgement }[],
+  fallback: Verdict,
+): Verdict {
+  return places.length === 0
+    ? fallback
+    : places.reduce<Verdict>((worst, place) => worseOf(worst, place.verdict), 'not-applicable');
+}
+
+/** A number for a message: at most `digits` after the point, no trailing zeros beyond two. */
+export function figure(value: number, digits = 2): string {
+  return value.toFixed(digits);
+}
+
+/** `1 reset`, `3 resets`. */
+export function plural(count: number, singular: string, several = `${singular}s`): string {
+  return `${count} ${count === 1 ? singular : several}`;
+}
+
+/** Findings of violations first where the cap bites. */
+export function cap(findings: readonly Finding[]): readonly Finding[] {
+  if (findings.length <= MOST_FINDINGS) return findings;
+  const rank = { violation: 0, inconclusive: 1, 'not-shown': 2, pass: 3 };
+  return [...findings].sort((a, b) => rank[a.verdict] - rank[b.verdict]).slice(0, MOST_FINDINGS);
+}

@@ -1,0 +1,20 @@
+import { describe, expect, it } from 'vitest';
+import { performanceIndex } from './performance-index';
+
+describe('performanceIndex', () => {
+  it('is the distance to the limit in threes of the deviation', () => {
+    // mean 10, s = 1: (13 − 10) ÷ 3 = 1. Source: definition of Ppu, ISO 22514-2, from memory.
+    const values = [9, 11, 9, 11, 10, 10, 9, 11, 9, 11];
+    const s = Math.sqrt(8 / 9);
+    expect(performanceIndex(values, 13, 0)?.value).toBeCloseTo(3 / (3 * s), 12);
+  });
+
+  it('says nothing where the spread does not exceed the resolution', () => {
+    expect(performanceIndex([10, 10.1, 10], 14, 0.5)).toBeUndefined();
+  });
+
+  it('takes the rounding of the instrument out of the spread', () => {
+    const values = [9, 11, 9, 11, 10, 10, 9, 11, 9, 11];
+    expect(performanceIndex(values, 13, 0.5)!.value).toBeGreaterThan(performanceIndex(values, 13, 0)!.value);
+  });
+});
