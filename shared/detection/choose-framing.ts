@@ -64,7 +64,7 @@ function judge(line: ReadLine, ticksPerSecond: number, stated?: Protocol): Forma
 function markIdentifications(characters: CharacterTable, ticksPerSecond: number, hasEightBits: boolean) {
   const isIdentification = new Uint8Array(characters.count);
   const identities: string[] = [];
-  const reader = new ReplyReader(characters, characters.count, ticksPerSecond);
+  const reader = new ReplyReader(characters, characters.count, ticksPerSecond, hasEightBits);
   let count = 0;
   const rest = 0.02 * ticksPerSecond;
   for (let i = 0; i < characters.count; i++) {

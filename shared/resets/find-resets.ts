@@ -65,7 +65,7 @@ function readReset(context: ResetContext, edge: number): Reset {
 }
 
 function findIdentification(context: ResetContext, first: number, windowEndTicks: number, to: number) {
-  const reader = new ReplyReader(context.characters, to, context.ticksPerSecond);
+  const reader = new ReplyReader(context.characters, to, context.ticksPerSecond, context.hasEightBits);
   const { startTicks, errors } = context.characters;
   const most = context.hasEightBits ? 1 : MOST_STRAYS;
   for (let i = first; i < to && i < first + most && startTicks[i] <= windowEndTicks; i++) {

@@ -32,6 +32,8 @@ export class ReplyReader {
     private readonly characters: CharacterTable,
     private readonly to: number,
     private readonly ticksPerSecond: number,
+    /** Eight data bits: headers of packets have bit 7 set, so no identity can be taken for one. */
+    private readonly hasEightBits: boolean,
   ) {}
 
   /** Reads an identification that begins with character `from`; null if none does. */
@@ -63,6 +65,7 @@ export class ReplyReader {
 
   /** Whether two characters without bit 6 follow closely: then this one is a packet's header, no identification. */
   private isPacketFrom(index: number): boolean {
+    if (this.hasEightBits && (this.characters.values[index] & 0x80) === 0) return false;
     for (let i = index + 1; i <= index + 2; i++) {
       if (i >= this.to || this.gapS(i - 1) > PACKET_GAP_S) return false;
       if (this.characters.errors[i] !== 0 || (this.value(i) & 0x40) !== 0) return false;
