@@ -139,6 +139,11 @@ function describe(reading: Reading, bytes: Uint8Array): CsvDialect {
   );
   const head = findHeader(records, first, fieldCount, separator);
   first = head.firstRow;
+  if (records[first] === undefined) {
+    throw new CaptureError('not-a-capture', 'no row of numbers or levels follows the header', {
+      line: records[0]?.line ?? 1,
+    });
+  }
   const rows = records
     .slice(first)
     .filter(isRow)
