@@ -128,6 +128,8 @@ class Receiver {
       }
       this.read(hidden, next);
       if (attempt.outcome !== 'character') return next;
+      // Nothing but space: the line is simply held there, no character hides in it.
+      if (attempt.value === 0 && (attempt.errors & FRAMING_ERROR) !== 0) return this.nextStart(next);
       builder.add(hidden, attempt.endTicks, attempt.value, attempt.errors, -1);
       next = Math.max(next, attempt.nextEdge);
       if ((attempt.errors & FRAMING_ERROR) === 0) return next;
