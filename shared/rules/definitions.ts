@@ -7,7 +7,6 @@ const V28 = 'ITU-T V.28 (03/93) and TIA-232-F; levels and slew from memory';
 const HOUSE = 'house';
 const PRACTICE = 'common practice';
 const RESETS = 'data and RTS, with at least one RTS OFF→ON';
-const DATA = 'data';
 
 type Row = readonly [
   id: string,

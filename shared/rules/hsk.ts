@@ -163,7 +163,8 @@ export function judgeCharactersWhileOff(context: RuleContext): RuleOutcome {
     if ((errors[i] & BREAK_ERROR) !== 0) continue;
     const at = startTicks[i];
     if (levelAt(rts, at) !== OFF) continue;
-    const doubt = context.differenceUncertainty(0);
+    // A hair more than U: an edge exactly U away is still not told apart.
+    const doubt = context.differenceUncertainty(0) * (1 + 1e-9);
     const isNearEdge = levelAt(rts, at + doubt) === ON || levelAt(rts, Math.max(0, at - doubt)) === ON;
     if (isNearEdge) undecided += 1;
     else definite += 1;

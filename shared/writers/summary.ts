@@ -1,4 +1,5 @@
 import type { CheckResult } from '../rules/finding';
+import { definitionOf } from '../rules/definitions';
 import { framingName } from '../characters/framing';
 import type { Decoded } from '../decode/decoded';
 import { printable } from './plain-text';
@@ -18,9 +19,10 @@ export interface SummaryRow {
 export function toSummaryRow(file: string, decoded: Decoded, check: CheckResult): SummaryRow {
   const rank = { violation: 0, inconclusive: 1, 'not-shown': 2, pass: 3, 'not-applicable': 4 };
   const weight = { blocking: 0, warning: 1, note: 2 };
-  const worst = [...check.rules].sort(
-    (a, b) => weight[a.severity] - weight[b.severity] || rank[a.verdict] - rank[b.verdict],
-  )[0];
+  // What weighs on the overall verdict comes first: a blocking rule that is open before a warning that is violated.
+  const worst = check.rules
+    .filter((rule) => definitionOf(rule.id)?.isMeasured === true)
+    .sort((a, b) => weight[a.severity] - weight[b.severity] || rank[a.verdict] - rank[b.verdict])[0];
   return {
     file: printable(file),
     verdict: check.verdict,
