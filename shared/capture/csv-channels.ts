@@ -25,11 +25,11 @@ export class CsvChannels {
   private readonly rowTimes = new RowTimes();
   private lastAnalogTime = -1;
 
-  constructor(columns: readonly CsvColumn[], clock: RecorderClock, isKept: KeepRule) {
+  constructor(columns: readonly CsvColumn[], clock: RecorderClock, keep: KeepRule) {
     this.sinks = columns.map((column) => ({
       column,
       digital:
-        column.kind === 'digital' ? new DigitalRecorder(column.name, clock, isKept(column.name)) : null,
+        column.kind === 'digital' ? new DigitalRecorder(column.name, clock, keep.isKept(column.name)) : null,
       analog: column.kind === 'analog' ? float32List() : null,
       value: NaN,
     }));

@@ -187,9 +187,7 @@ function findTime(
   if (counted >= 0) return { kind: 'counts', index: counted };
   if (!mayBeTime(0)) {
     // A header that says time is believed even where the rows do not rise: the reader then tells where they do not.
-    const claimed = names.findIndex((_, i) =>
-      words[i].some((word) => TIME_WORDS.has(word) && word !== 'x' && word !== 't'),
-    );
+    const claimed = names.findIndex((_, i) => isSpelledOut(i));
     return claimed >= 0 && !facts[claimed].isDigital ? asColumn(claimed) : { kind: 'rows' };
   }
   if (facts[0].isCounting && names.length > 2 && mayBeTime(1) && !facts[1].isDigital) return asColumn(1);

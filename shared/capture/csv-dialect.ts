@@ -117,6 +117,15 @@ function refuseUnreadable(best: Reading, readings: readonly Reading[], bytes: Ui
   const isProse =
     best.rowCount === 0 || best.rowCount * 4 < filled.length || (best.fieldCount === 1 && best.rowCount < 8);
   if (!isProse) return;
+  const header = readings.find(
+    ({ records }) => records.length <= 3 && records.some(({ cells }) => cells.length > 1),
+  );
+  if (best.rowCount === 0 && header !== undefined && filled.length <= 2) {
+    throw new CaptureError('no-rows', 'the table has a header but no rows of numbers or levels', {
+      line: 1,
+      byte: 0,
+    });
+  }
   const first = filled[0] ?? { line: 1, start: 0, end: 0 };
   const shown = quoteForMessage(bytes.subarray(first.start, Math.max(first.start, first.end - 1)));
   throw new CaptureError(

@@ -1,41 +1,25 @@
 import type { Capture } from './capture';
-import { HIGH, LOW, UNKNOWN } from './capture';
 import { CaptureError } from './capture-error';
-import { CsvChannels } from './csv-channels';
-import type { ColumnSink } from './csv-channels';
-import { levelOfText } from './csv-columns';
-import type { CsvDialect } from './csv-dialect';
+import { CsvCells } from './csv-cells';
 import { findDialect } from './csv-dialect';
-import { DecimalClock } from './decimal-clock';
+import { CsvRow, UnfinishedRecord } from './csv-row';
+import { CsvTable } from './csv-table';
 import { DecimalNumber } from './decimal-number';
 import type { Place } from './defect-list';
 import { DefectList } from './defect-list';
-import type { RecorderClock } from './digital-recorder';
-import { BUSY_SPACING_S } from './digital-recorder';
 import type { FormatReader, KeepRule } from './format-reader';
-import { PredictedRows } from './predicted-rows';
-import { RowSpacing } from './row-times';
 import type { SampleInterval } from './stated-rate';
-import { decodeText, quoteForMessage } from './text-bytes';
+import { quoteForMessage } from './text-bytes';
 
 const LINE_FEED = 10;
 const CARRIAGE_RETURN = 13;
-const SPACE = 32;
-const QUOTE = 0x22;
 const HASH = 0x23;
 const SEMICOLON = 0x3b;
 const SLASH = 0x2f;
-const ZERO = 0x30;
 
 /** The beginning that is looked at before the first row is taken. */
 const EXAMINED_BYTES = 262_144;
 const LONGEST_RECORD = 1_048_576;
-const MOST_CELLS = 8192;
-
-/** Seconds of one unit of the time source, as an exact ratio, and its decimal places where it has some. */
-interface TimeUnit extends SampleInterval {
-  readonly places: number;
-}
 
 /**
  * Reads a table of samples or changes, chunk by chunk.
@@ -43,31 +27,27 @@ interface TimeUnit extends SampleInterval {
  */
 export class CsvReader implements FormatReader {
   private readonly defects = new DefectList();
-  private readonly recorderClock: RecorderClock = { busySpacing: 0 };
   private readonly number = new DecimalNumber();
-  private readonly spacing = new RowSpacing();
+  private readonly row = new CsvRow();
+  private readonly unfinished = new UnfinishedRecord();
 
   private examined: Uint8Array[] = [];
   private examinedLength = 0;
-  private table: Table | null = null;
+  private table: CsvTable | null = null;
+  private cells: CsvCells | null = null;
 
-  private carry = new Uint8Array(0);
   private bytesBefore = 0;
   private line = 1;
   private isAfterReturn = false;
   private isStopped = false;
-
-  private readonly starts = new Int32Array(MOST_CELLS);
-  private readonly ends = new Int32Array(MOST_CELLS);
-  private cellCount = 0;
-
-  private lastTicks = 0;
   /** A row whose time is not known was left out since the last good one. */
   private isDoubtful = false;
+  /** Digits after the point in the time of the last row; infinite where it was written in another way. */
+  private timeScale = Infinity;
 
   /** `sampleInterval`: what the caller states; wins over what the file states. */
   constructor(
-    private readonly isKept: KeepRule,
+    private readonly keep: KeepRule,
     private readonly sampleInterval: SampleInterval | null,
     /** False: every row is read cell by cell; slower, and what the faster way is checked against. */
     private readonly isPredicting = true,
@@ -75,7 +55,7 @@ export class CsvReader implements FormatReader {
 
   push(chunk: Uint8Array): void {
     if (this.table !== null) {
-      this.readChunk(chunk);
+      this.readChunk(this.table, chunk);
       return;
     }
     this.examined.push(chunk.slice());
@@ -84,25 +64,24 @@ export class CsvReader implements FormatReader {
   }
 
   finish(): Capture {
-    if (this.table === null) this.begin();
-    if (this.carry.length > 0) this.read(this.carry, true);
-    const table = this.table;
-    if (table === null || this.spacing.rows === 0) {
+    const table = this.table ?? this.begin();
+    if (this.unfinished.length > 0) this.read(table, this.unfinished.takeBytes(), true);
+    if (table.spacing.rows === 0) {
       throw new CaptureError('no-rows', 'no row has a time that can be read', {
         line: this.line,
         byte: this.bytesBefore,
       });
     }
-    const interval = this.spacing.sampleInterval(table.channels.hasAnalog);
+    const interval = table.time.kind === 'rows' ? 1 : table.spacing.sampleInterval(table.channels.hasAnalog);
     return {
       format: 'csv',
       byteLength: this.bytesBefore,
-      timeBase: table.clock.timeBase(table.unit.numerator, table.unit.denominator),
-      endTicks: this.lastTicks,
+      timeBase: table.timeBase,
+      endTicks: table.lastTicks,
       layout: interval === null ? 'transitions' : 'sampled',
       sampleIntervalTicks: interval,
       unitTicks: table.clock.unitTicks,
-      channels: table.channels.finish(this.spacing.isUniform ? interval : null),
+      channels: table.channels.finish(table.spacing.isUniform ? interval : null),
       gaps: [],
       defects: this.defects.toArray(),
       log: [],
@@ -110,7 +89,7 @@ export class CsvReader implements FormatReader {
   }
 
   /** Finds the dialect and takes what was held back for it. */
-  private begin(): void {
+  private begin(): CsvTable {
     const all = new Uint8Array(this.examinedLength);
     let at = 0;
     for (const part of this.examined) {
@@ -120,100 +99,51 @@ export class CsvReader implements FormatReader {
     this.examined = [];
     const mark = all[0] === 0xef && all[1] === 0xbb && all[2] === 0xbf ? 3 : 0;
     const dialect = findDialect(all.subarray(mark));
-    this.table = this.makeTable(dialect);
+    const table = new CsvTable(dialect, this.sampleInterval, this.keep);
+    this.table = table;
+    this.cells = new CsvCells(table.channels, table.hasComma, (code, from, to, name) =>
+      this.report(
+        code,
+        from,
+        (shown) => `${shown} is no ${code === 'bad-level' ? 'level' : 'voltage'} of ${name}`,
+        to,
+      ),
+    );
     this.line = dialect.dataLine;
     this.bytesBefore = mark + dialect.dataStart;
-    this.readChunk(all.subarray(this.bytesBefore));
+    this.readChunk(table, all.subarray(this.bytesBefore));
+    return table;
   }
 
-  private makeTable(dialect: CsvDialect): Table {
-    const { columns } = dialect;
-    if (columns.channels.length === 0) {
-      throw new CaptureError('no-channels', 'the table has no column beside the time', {
-        line: dialect.dataLine,
-      });
-    }
-    const unit = this.findUnit(dialect);
-    const clock = new DecimalClock(unit.places, (scale) => this.scaleTimes(scale));
-    const channels = new CsvChannels(columns.channels, this.recorderClock, this.isKept);
-    const unitsPerSecond = Number(unit.denominator) / Number(unit.numerator);
-    this.recorderClock.busySpacing = BUSY_SPACING_S * unitsPerSecond;
-    return {
-      dialect,
-      unit,
-      clock,
-      channels,
-      predicted: new PredictedRows(channels.digital, this.spacing),
-      separator: dialect.separator.charCodeAt(0),
-      comma: dialect.decimal === ',' || (dialect.decimal === null && dialect.separator !== ','),
-    };
-  }
-
-  private findUnit(dialect: CsvDialect): TimeUnit {
-    const { time } = dialect.columns;
-    const interval = this.sampleInterval ?? dialect.statedInterval;
-    if (time.kind === 'column') {
-      const places = time.places ?? dialect.statedPlaces;
-      if (places === null && time.isInteger && interval !== null) return { ...interval, places: 9 };
-      return { numerator: 1n, denominator: 10n ** BigInt(places ?? 0), places: places ?? 0 };
-    }
-    if (interval === null) {
-      const what = time.kind === 'counts' ? 'the time column counts samples' : 'there is no time column';
-      const message = `${what} and no sample rate is stated: state it with --sample-rate`;
-      throw new CaptureError('no-sample-rate', message, { line: dialect.dataLine });
-    }
-    return { ...interval, places: 9 };
-  }
-
-  private scaleTimes(scale: (time: number) => number): void {
-    this.table?.channels.scaleTimes(scale);
-    this.spacing.scale(scale);
-    this.lastTicks = scale(this.lastTicks);
-    this.recorderClock.busySpacing = scale(this.recorderClock.busySpacing);
-  }
-
-  private readChunk(chunk: Uint8Array): void {
-    if (this.isStopped) {
-      this.bytesBefore += chunk.length;
-      return;
-    }
+  private readChunk(table: CsvTable, chunk: Uint8Array): void {
     let rest = chunk;
-    while (this.carry.length > 0 && rest.length > 0) {
-      let cut = 0;
-      while (cut < rest.length && rest[cut] !== LINE_FEED && rest[cut] !== CARRIAGE_RETURN) cut += 1;
-      cut = Math.min(rest.length, cut + 1);
-      const joined = new Uint8Array(this.carry.length + cut);
-      joined.set(this.carry);
-      joined.set(rest.subarray(0, cut), this.carry.length);
-      rest = rest.subarray(cut);
-      this.carry = this.bounded(joined.slice(this.read(joined, false)));
+    while (rest.length > 0 && !this.isStopped) {
+      if (this.unfinished.length === 0) rest = rest.subarray(this.read(table, rest, false));
+      if (rest.length === 0 || this.isStopped) break;
+      const { taken, isComplete } = this.unfinished.append(rest, table.separator);
+      rest = rest.subarray(taken);
+      if (isComplete) this.read(table, this.unfinished.takeBytes(), false);
+      else this.refuseEndless();
     }
-    if (rest.length === 0) return;
-    this.carry = this.bounded(rest.slice(this.read(rest, false)));
+    if (this.isStopped) this.bytesBefore += rest.length;
   }
 
-  private bounded(record: Uint8Array<ArrayBuffer>): Uint8Array<ArrayBuffer> {
-    if (record.length <= LONGEST_RECORD) return record;
-    const isQuoted = record.includes(QUOTE);
+  private refuseEndless(): void {
+    const { length, isQuoted } = this.unfinished;
+    if (length <= LONGEST_RECORD) return;
     const code = isQuoted ? 'unclosed-quote' : 'record-too-long';
     const what = isQuoted ? 'a quote is opened and not closed again' : 'a line does not end';
-    const message = `${what} within ${LONGEST_RECORD} bytes`;
-    if (this.spacing.rows === 0)
-      throw new CaptureError(code, message, { line: this.line, byte: this.bytesBefore });
-    this.defects.add(code, `${message}: nothing is read from here on`, {
-      line: this.line,
-      column: 1,
-      byte: this.bytesBefore,
-    });
+    const message = `${what} within ${LONGEST_RECORD} bytes: nothing is read from here on`;
+    this.defects.add(code, message, { line: this.line, column: 1, byte: this.bytesBefore });
     this.isStopped = true;
-    this.bytesBefore += record.length;
-    return new Uint8Array(0);
+    this.bytesBefore += this.unfinished.takeBytes().length;
   }
 
-  /** Reads whole records; returns how many bytes are done with. */
-  private read(bytes: Uint8Array, isFinal: boolean): number {
-    const table = this.table as Table;
+  /** Reads whole records; returns how many bytes are done with. `isFinal`: the file ends with the bytes. */
+  private read(table: CsvTable, bytes: Uint8Array, isFinal: boolean): number {
+    const { row } = this;
     const view = new DataView(bytes.buffer, bytes.byteOffset, bytes.length);
+    this.current = bytes;
     let i = 0;
     while (i < bytes.length && !this.isStopped) {
       const c = bytes[i];
@@ -224,14 +154,12 @@ export class CsvReader implements FormatReader {
         continue;
       }
       this.isAfterReturn = false;
-      const end = this.splitRow(bytes, i, table.separator);
-      if (end === bytes.length && !isFinal) break;
-      const rows = this.spacing.rows;
-      if (!isComment(bytes, i, table.separator)) this.takeRow(table, bytes, i, end, end === bytes.length);
-      this.line += this.extraLines;
-      const isPlain =
-        this.spacing.rows > rows && this.extraLines === 0 && this.cellCount === table.dialect.fieldCount;
-      i = isPlain && this.isPredicting ? this.takeSimilarRows(table, bytes, view, i, end) : end;
+      row.split(bytes, i, table.separator);
+      if (row.end === bytes.length && !isFinal) break;
+      const isTaken = !isComment(bytes, i, table.separator) && this.takeRow(table, bytes);
+      this.line += row.extraLines;
+      const hasSuccessors = isTaken && this.isPredicting && row.extraLines === 0;
+      i = hasSuccessors ? this.takeSimilarRows(table, bytes, view) : row.end;
     }
     const done = this.isStopped ? bytes.length : i;
     this.bytesBefore += done;
@@ -239,239 +167,121 @@ export class CsvReader implements FormatReader {
   }
 
   /**
-   * Takes the rows behind the one in `[start, end)` as long as they look like it. Returns the offset of what comes next: the end of
-   * line at `end` where there are none.
+   * Takes the rows behind the present one as long as they look like it. Returns the offset of what comes next: the end of line of
+   * the present row where there are none.
    */
-  private takeSimilarRows(
-    table: Table,
-    bytes: Uint8Array,
-    view: DataView,
-    start: number,
-    end: number,
-  ): number {
-    const { time } = table.dialect.columns;
+  private takeSimilarRows(table: CsvTable, bytes: Uint8Array, view: DataView): number {
+    const { predicted } = table;
+    const { end } = this.row;
     const isPair = bytes[end] === CARRIAGE_RETURN && bytes[end + 1] === LINE_FEED;
     const next = end + (isPair ? 2 : 1);
-    if (time.kind !== 'column' || !this.spacing.isSettled || bytes.length - next < next - start) return end;
-    const timeStart = this.starts[time.index];
-    const timeEnd = this.ends[time.index];
-    const scale = table.clock.linear(timeEnd - timeStart, this.timeScale);
-    if (scale === null) return end;
-    const cells: number[] = [];
-    for (const { column } of table.channels.sinks) {
-      const cell = this.starts[column.index];
-      if (this.ends[column.index] !== cell + 1 || cell < timeEnd) return end;
-      cells.push(cell - start);
-    }
-    const shape = { length: next - start, timeStart: timeStart - start, timeEnd: timeEnd - start, cells };
-    if (!table.predicted.prepare(bytes, start, shape, scale, this.lastTicks)) return end;
-    const stop = table.predicted.take(bytes, view, next);
-    this.line += table.predicted.rows + 1;
-    this.lastTicks = table.predicted.ticks;
-    table.clock.accept(this.lastTicks);
+    if (!table.spacing.isSettled || next + (next - this.row.start) > bytes.length) return end;
+    if (this.cells?.hasBadCell !== false || !predicted.prepare(bytes, this.row, next, table, this.timeScale))
+      return end;
+    const stop = predicted.take(bytes, view, next);
+    this.line += predicted.rows + 1;
+    table.accept(predicted.ticks);
     this.isAfterReturn = bytes[stop - 1] === CARRIAGE_RETURN;
     return stop;
   }
 
-  /** Digits after the point in the time of the last row. */
-  private timeScale = 0;
-
-  /** Line breaks inside the quotes of the record last split. */
-  private extraLines = 0;
-
-  /** Notes where the cells of a record stand, without quotes and blanks around them. Returns the offset of its end of line. */
-  private splitRow(bytes: Uint8Array, start: number, separator: number): number {
-    const length = bytes.length;
-    this.extraLines = 0;
-    let count = 0;
-    let i = start;
-    for (;;) {
-      while (i < length && bytes[i] === SPACE) i += 1;
-      let from = i;
-      let to = -1;
-      if (bytes[i] === QUOTE) {
-        from = i + 1;
-        i = this.skipQuoted(bytes, from);
-        to = i;
-        if (i < length) i += 1;
-      }
-      while (i < length && bytes[i] !== separator && bytes[i] !== LINE_FEED && bytes[i] !== CARRIAGE_RETURN)
-        i += 1;
-      if (to < 0) to = i;
-      while (to > from && bytes[to - 1] <= SPACE) to -= 1;
-      if (count < MOST_CELLS) {
-        this.starts[count] = from;
-        this.ends[count] = to;
-        count += 1;
-      }
-      if (i >= length || bytes[i] !== separator) break;
-      i += 1;
+  /** True: the row holds and was taken. */
+  private takeRow(table: CsvTable, bytes: Uint8Array): boolean {
+    const { row } = this;
+    row.dropTrailing(table.fieldCount);
+    if (row.cellCount !== table.fieldCount) {
+      this.takeRaggedRow(table, bytes);
+      return false;
     }
-    this.cellCount = count;
-    return i;
-  }
-
-  /** The offset of the quote that closes the field. Source: RFC 4180 section 2, rules 6 and 7. */
-  private skipQuoted(bytes: Uint8Array, start: number): number {
-    let i = start;
-    for (; i < bytes.length; i++) {
-      if (bytes[i] === QUOTE) {
-        if (bytes[i + 1] !== QUOTE) return i;
-        i += 1;
-      } else if (bytes[i] === LINE_FEED || (bytes[i] === CARRIAGE_RETURN && bytes[i + 1] !== LINE_FEED)) {
-        this.extraLines += 1;
-      }
-    }
-    return i;
-  }
-
-  private placeOf(rowStart: number, offset: number): Place {
-    return { line: this.line, column: offset - rowStart + 1, byte: this.bytesBefore + offset };
-  }
-
-  private takeRow(table: Table, bytes: Uint8Array, start: number, end: number, isCut: boolean): void {
-    const { fieldCount } = table.dialect;
-    while (this.cellCount > fieldCount && this.ends[this.cellCount - 1] <= this.starts[this.cellCount - 1])
-      this.cellCount -= 1;
-    const ticks = this.timeOfRow(table, bytes, start);
-    if (ticks === null) return;
-    if (this.cellCount !== fieldCount) {
-      this.takeRaggedRow(table, start, end, ticks, isCut);
-      return;
-    }
+    const ticks = this.timeOfRow(table, bytes);
+    if (ticks === null) return false;
     if (this.isDoubtful) {
-      if (ticks > this.lastTicks + 1) table.channels.forget(this.lastTicks + 1);
+      if (ticks > table.lastTicks + 1) table.channels.forget(table.lastTicks + 1);
       this.isDoubtful = false;
     }
-    let isUnchanged = true;
-    for (const sink of table.channels.sinks) {
-      if (!this.takeCell(table, sink, bytes, start, ticks)) isUnchanged = false;
-    }
-    table.channels.pushAnalog(ticks);
-    this.spacing.take(ticks, isUnchanged);
-    table.clock.accept(ticks);
-    this.lastTicks = ticks;
+    const isUnchanged = this.cells?.take(bytes, row, ticks) ?? true;
+    table.spacing.take(ticks, isUnchanged);
+    table.accept(ticks);
+    return true;
   }
 
-  /** A row with missing or surplus cells: its time holds, what the channels do there is not known. */
-  private takeRaggedRow(table: Table, start: number, end: number, ticks: number, isCut: boolean): void {
-    const { fieldCount } = table.dialect;
-    const isShort = this.cellCount < fieldCount;
-    const code = isShort ? (isCut ? 'cut-short' : 'row-too-short') : 'row-too-long';
-    const message = `the row has ${this.cellCount} field${this.cellCount === 1 ? '' : 's'} instead of ${fieldCount}`;
-    this.defects.add(
-      code,
-      isCut && isShort ? `the file ends inside a row: ${message}` : message,
-      this.placeOf(start, isShort ? end : this.starts[fieldCount]),
-    );
+  /** A row with missing or surplus cells: what the channels do there is not known; its time is used where it holds. */
+  private takeRaggedRow(table: CsvTable, bytes: Uint8Array): void {
+    const { row } = this;
+    const isCut = row.end === bytes.length && row.cellCount < table.fieldCount;
+    const code = isCut ? 'cut-short' : row.cellCount < table.fieldCount ? 'row-too-short' : 'row-too-long';
+    const fields = `${row.cellCount} field${row.cellCount === 1 ? '' : 's'} instead of ${table.fieldCount}`;
+    const message = isCut ? `the file ends inside a row: it has ${fields}` : `the row has ${fields}`;
+    this.report(code, row.surplusAt(table.fieldCount), () => message);
     if (isCut) return;
-    table.channels.forget(this.isDoubtful ? this.lastTicks + 1 : ticks);
+    const ticks = this.parseTime(table, bytes);
+    if (!(ticks >= table.lastTicks)) {
+      this.isDoubtful = true;
+      return;
+    }
+    table.channels.forget(this.isDoubtful ? table.lastTicks + 1 : ticks);
     this.isDoubtful = false;
-    this.spacing.take(ticks, false);
-    table.clock.accept(ticks);
-    this.lastTicks = ticks;
+    table.spacing.take(ticks, false);
+    table.accept(ticks);
+  }
+
+  /** Time of the row in ticks, NaN where it has none. */
+  private parseTime(table: CsvTable, bytes: Uint8Array): number {
+    const { time, spacing, clock } = table;
+    const { number, row } = this;
+    if (time.kind === 'rows') {
+      number.setInteger(spacing.rows);
+      return clock.toTicks(number);
+    }
+    if (time.index >= row.cellCount) return NaN;
+    if (!number.parse(bytes, row.starts[time.index], row.ends[time.index], table.hasComma)) return NaN;
+    this.timeScale = number.exponent === null && number.wide === null ? number.scale : Infinity;
+    return clock.toTicks(number);
   }
 
   /** Time of the row in ticks; null where it has none that can be used, which is then reported. */
-  private timeOfRow(table: Table, bytes: Uint8Array, start: number): number | null {
-    const { time } = table.dialect.columns;
-    const number = this.number;
-    if (time.kind === 'rows') {
-      number.mantissa = this.spacing.rows;
-      number.wide = null;
-      number.scale = 0;
-      number.exponent = null;
-      return table.clock.toTicks(number);
-    }
-    const from = this.starts[time.index];
-    const to = this.ends[time.index];
-    if (time.index >= this.cellCount || !number.parse(bytes, from, to, table.comma)) {
-      const isMissing = time.index >= this.cellCount || from === to;
-      const shown = isMissing
-        ? 'the time is missing'
-        : `${quoteForMessage(bytes.subarray(from, to))} is no time`;
-      this.defects.add(
-        isMissing ? 'no-time' : 'bad-time',
-        `${shown}: the row is left out`,
-        this.placeOf(start, isMissing ? start : from),
-      );
-      this.isDoubtful = true;
-      return null;
-    }
-    this.timeScale = number.exponent === null && number.wide === null ? number.scale : Infinity;
-    const ticks = table.clock.toTicks(number);
-    if (ticks >= this.lastTicks) return ticks;
-    const shown = quoteForMessage(bytes.subarray(from, to));
-    if (this.isDoubtful) {
-      this.defects.add(
-        'time-backwards',
-        `the time ${shown} stays behind: nothing is read from here on`,
-        this.placeOf(start, from),
-      );
-      this.isStopped = true;
-    } else {
-      this.defects.add(
-        'time-backwards',
-        `the time ${shown} lies before that of the row above: the row is left out`,
-        this.placeOf(start, from),
-      );
-      this.isDoubtful = true;
-    }
+  private timeOfRow(table: CsvTable, bytes: Uint8Array): number | null {
+    const { row } = this;
+    const ticks = this.parseTime(table, bytes);
+    if (ticks >= table.lastTicks) return ticks;
+    const index = table.time.kind === 'rows' ? 0 : table.time.index;
+    const from = row.starts[index];
+    const isMissing = row.ends[index] <= from;
+    const code = isMissing ? 'no-time' : Number.isNaN(ticks) ? 'bad-time' : 'time-backwards';
+    const isBackwards = code === 'time-backwards';
+    const stops = isBackwards && this.isDoubtful;
+    this.report(
+      code,
+      from,
+      (shown) => {
+        if (isMissing) return 'the time is missing: the row is left out';
+        if (!isBackwards) return `${shown} is no time that can be used: the row is left out`;
+        return stops
+          ? `the time ${shown} stays behind: nothing is read from here on`
+          : `the time ${shown} lies before that of the row above: the row is left out`;
+      },
+      row.ends[index],
+    );
+    this.isStopped = stops;
+    this.isDoubtful = true;
     return null;
   }
 
-  /** True: the channel did not change. */
-  private takeCell(table: Table, sink: ColumnSink, bytes: Uint8Array, start: number, ticks: number): boolean {
-    const from = this.starts[sink.column.index];
-    const to = this.ends[sink.column.index];
-    if (to <= from) return true;
-    if (sink.digital === null) return this.takeVolts(table, sink, bytes, start);
-    const before = sink.digital.level;
-    const byte = bytes[from];
-    let level: number | undefined;
-    if (to - from === 1 && (byte === ZERO || byte === ZERO + 1)) level = byte === ZERO ? LOW : HIGH;
-    else level = levelOfText(decodeText(bytes.subarray(from, Math.min(to, from + 32))));
-    if (level === undefined) {
-      const shown = quoteForMessage(bytes.subarray(from, to));
-      this.defects.add('bad-level', `${shown} is no level of ${sink.column.name}`, this.placeOf(start, from));
-      level = UNKNOWN;
-    }
-    sink.digital.change(ticks, level);
-    return level === before;
-  }
+  /** Bytes that are being read, for messages. */
+  private current: Uint8Array = new Uint8Array(0);
 
-  private takeVolts(table: Table, sink: ColumnSink, bytes: Uint8Array, start: number): boolean {
-    const from = this.starts[sink.column.index];
-    const to = this.ends[sink.column.index];
-    const number = this.number;
-    const before = sink.value;
-    if (number.parse(bytes, from, to, table.comma)) {
-      sink.value = number.mantissa * 10 ** -number.scale * sink.column.voltsPerUnit;
-    } else {
-      const text = decodeText(bytes.subarray(from, Math.min(to, from + 32)));
-      if (!/^[+-]?(nan|inf(inity)?|-+)$/i.test(text)) {
-        const shown = quoteForMessage(bytes.subarray(from, to));
-        this.defects.add(
-          'bad-value',
-          `${shown} is no voltage of ${sink.column.name}`,
-          this.placeOf(start, from),
-        );
-      }
-      sink.value = NaN;
+  private report(code: string, from: number, describe: (shown: string) => string, to = from): void {
+    if (this.defects.isFull) {
+      this.defects.addUntold();
+      return;
     }
-    return sink.value === before;
+    const place: Place = {
+      line: this.line,
+      column: from - this.row.start + 1,
+      byte: this.bytesBefore + from,
+    };
+    this.defects.add(code, describe(quoteForMessage(this.current.subarray(from, to))), place);
   }
-}
-
-interface Table {
-  readonly dialect: CsvDialect;
-  readonly unit: TimeUnit;
-  readonly clock: DecimalClock;
-  readonly channels: CsvChannels;
-  readonly predicted: PredictedRows;
-  readonly separator: number;
-  /** A comma is a decimal sign. */
-  readonly comma: boolean;
 }
 
 function isComment(bytes: Uint8Array, start: number, separator: number): boolean {

@@ -1,10 +1,11 @@
-import { CaptureError } from './capture-error';
 import type { DecimalNumber } from './decimal-number';
 import type { TimeBase } from '../time/time-base';
 
 const LARGEST = Number.MAX_SAFE_INTEGER;
 /** Finest tick, in decimal places of a second, that may be given up where the times span too much for it (house). */
 const COARSEST_PLACES = 9;
+/** Exponents beyond it are nonsense as times. */
+const LARGEST_SHIFT = 30;
 
 /** `digits · factor / divisor − origin` are ticks; where that is no whole number the tick is too coarse for the time. */
 export interface LinearScale {
@@ -37,11 +38,17 @@ export class DecimalClock {
     private readonly scaleTimes: (scale: (time: number) => number) => void,
   ) {}
 
-  /** The time in ticks. Negative, or smaller than the one before: time runs backwards. The caller then calls no `accept`. */
+  /**
+   * The time in ticks. Negative, or smaller than the one before: time runs backwards; NaN: it lies too far from the first to be
+   * exact beside it. The caller then calls no `accept`.
+   */
   toTicks(time: DecimalNumber): number {
     this.notePrecision(time);
     if (time.scale > this.places || !this.isStarted) time.stripZeros();
-    if (!this.isStarted) this.start(time);
+    if (!this.isStarted) {
+      if (time.scale < -LARGEST_SHIFT) return NaN;
+      this.start(time);
+    }
     if (time.scale > this.places) this.refine(time.scale);
     return this.relative(time);
   }
@@ -101,7 +108,6 @@ export class DecimalClock {
   private exact(time: DecimalNumber): bigint {
     const mantissa = time.wide ?? BigInt(time.mantissa);
     const shift = this.places - time.scale;
-    if (shift > 400) return mantissa * 10n ** 400n;
     return shift >= 0 ? mantissa * 10n ** BigInt(shift) : roundedQuotient(mantissa, 10n ** BigInt(-shift));
   }
 
@@ -113,7 +119,10 @@ export class DecimalClock {
       if (Math.abs(value) <= LARGEST && Math.abs(this.originNumber) <= LARGEST && ticks <= LARGEST)
         return ticks;
     }
+    if (time.scale < -LARGEST_SHIFT) return NaN;
     let ticks = this.exact(time) - this.origin;
+    const spare = Math.max(0, this.places + this.unitPlaces - COARSEST_PLACES);
+    if (ticks / 10n ** BigInt(spare) > BigInt(LARGEST)) return NaN;
     while (ticks > BigInt(LARGEST)) {
       this.coarsen();
       ticks = this.exact(time) - this.origin;
@@ -134,9 +143,6 @@ export class DecimalClock {
   }
 
   private coarsen(): void {
-    if (this.places + this.unitPlaces <= COARSEST_PLACES) {
-      throw new CaptureError('time-range', 'the times span more than 2⁵³ steps: too many to keep them exact');
-    }
     this.scaleTimes((time) => Math.round(time / 10));
     this.latest = Math.round(this.latest / 10);
     this.origin = roundedQuotient(this.origin, 10n);

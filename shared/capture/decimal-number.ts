@@ -25,6 +25,13 @@ export class DecimalNumber {
   /** Power of ten of the exponent as written; null without one. */
   exponent: number | null = null;
 
+  setInteger(value: number): void {
+    this.mantissa = value;
+    this.wide = null;
+    this.scale = 0;
+    this.exponent = null;
+  }
+
   /** Parses `bytes[start, end)`. False: that is no finite number. `comma`: a comma is taken for the decimal sign too. */
   parse(bytes: Uint8Array, start: number, end: number, comma: boolean): boolean {
     let i = start;

@@ -19,9 +19,18 @@ export class DefectList {
     return this.told.length + this.untold;
   }
 
+  /** Further defects are only counted: their messages need not be made. */
+  get isFull(): boolean {
+    return this.told.length >= TOLD_ONE_BY_ONE;
+  }
+
+  addUntold(): void {
+    this.untold += 1;
+  }
+
   add(code: string, message: string, place: Place): void {
-    if (this.told.length >= TOLD_ONE_BY_ONE) {
-      this.untold += 1;
+    if (this.isFull) {
+      this.addUntold();
       return;
     }
     this.told.push({ code, message, line: place.line, column: place.column, byte: place.byte });

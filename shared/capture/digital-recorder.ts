@@ -28,7 +28,6 @@ export class DigitalRecorder {
   private committedLevel: number = UNKNOWN;
   private pendingTime = 0;
   private edgeCount = 0;
-  private shortSpacings = 0;
 
   constructor(
     readonly name: string,
@@ -111,8 +110,7 @@ export class DigitalRecorder {
         previous = chunk[i];
       }
     });
-    this.shortSpacings = short;
-    if (this.shortSpacings * 2 <= this.times.length) return;
+    if (short * 2 <= this.times.length) return;
     this.isTooBusy = true;
     this.times.clear();
     this.levels.clear();

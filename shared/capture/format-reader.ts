@@ -7,5 +7,20 @@ export interface FormatReader {
   finish(): Capture;
 }
 
-/** Whether a channel must be kept however busy it is. */
-export type KeepRule = (channelName: string) => boolean;
+/** Tells which channels must be kept however busy they are. */
+export class KeepRule {
+  /** `endings`: names or endings of names. */
+  constructor(private readonly endings: readonly string[]) {}
+
+  isKept(channelName: string): boolean {
+    return this.endings.some((ending) => channelName.endsWith(ending));
+  }
+
+  /** Whether a bit of the vector of that name is kept, `name[3]`. */
+  isBitKept(vectorName: string): boolean {
+    return this.endings.some((ending) => {
+      const [, base] = /^(.*)\[-?\d+\]$/.exec(ending) ?? [];
+      return base !== undefined && vectorName.endsWith(base);
+    });
+  }
+}

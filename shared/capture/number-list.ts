@@ -3,15 +3,23 @@ const LARGEST_CHUNK = 65536;
 
 type NumberArray = Float64Array | Float32Array | Uint8Array;
 
+const NO_FLOAT64 = new Float64Array(0);
+const NO_FLOAT32 = new Float32Array(0);
+const NO_UINT8 = new Uint8Array(0);
+
 /** A growing list of numbers kept as a list of chunks: it never copies what it already holds until `toArray`. */
 export class NumberList<A extends NumberArray> {
-  private full: A[] = [];
+  private full: A[] | null = null;
   private current: A;
   private used = 0;
   private before = 0;
 
-  constructor(private readonly allocate: (length: number) => A) {
-    this.current = allocate(0);
+  /** `empty`: an array of length 0, shared by all lists of a kind: most channels of a large dump never change. */
+  constructor(
+    private readonly allocate: (length: number) => A,
+    private readonly empty: A,
+  ) {
+    this.current = empty;
   }
 
   get length(): number {
@@ -31,7 +39,7 @@ export class NumberList<A extends NumberArray> {
 
   /** Calls `visit` with each chunk and the count of numbers used in it. Chunks may be changed in place. */
   forEachChunk(visit: (chunk: A, count: number) => void): void {
-    for (const chunk of this.full) visit(chunk, chunk.length);
+    for (const chunk of this.full ?? []) visit(chunk, chunk.length);
     visit(this.current, this.used);
   }
 
@@ -39,8 +47,8 @@ export class NumberList<A extends NumberArray> {
   toArray(): A {
     const all = this.allocate(this.length);
     let at = 0;
-    this.full.reverse();
-    for (let chunk = this.full.pop(); chunk !== undefined; chunk = this.full.pop()) {
+    const full = (this.full ?? []).reverse();
+    for (let chunk = full.pop(); chunk !== undefined; chunk = full.pop()) {
       all.set(chunk, at);
       at += chunk.length;
     }
@@ -50,14 +58,14 @@ export class NumberList<A extends NumberArray> {
   }
 
   clear(): void {
-    this.full = [];
-    this.current = this.allocate(0);
+    this.full = null;
+    this.current = this.empty;
     this.used = 0;
     this.before = 0;
   }
 
   private grow(): void {
-    if (this.used > 0) this.full.push(this.current);
+    if (this.used > 0) (this.full ??= []).push(this.current);
     this.before += this.used;
     this.current = this.allocate(Math.min(LARGEST_CHUNK, Math.max(FIRST_CHUNK, this.before)));
     this.used = 0;
@@ -65,13 +73,13 @@ export class NumberList<A extends NumberArray> {
 }
 
 export function float64List(): NumberList<Float64Array> {
-  return new NumberList((length) => new Float64Array(length));
+  return new NumberList((length) => new Float64Array(length), NO_FLOAT64);
 }
 
 export function float32List(): NumberList<Float32Array> {
-  return new NumberList((length) => new Float32Array(length));
+  return new NumberList((length) => new Float32Array(length), NO_FLOAT32);
 }
 
 export function uint8List(): NumberList<Uint8Array> {
-  return new NumberList((length) => new Uint8Array(length));
+  return new NumberList((length) => new Uint8Array(length), NO_UINT8);
 }

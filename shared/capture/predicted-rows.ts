@@ -1,21 +1,33 @@
-import type { LinearScale } from './decimal-clock';
+import type { CsvChannels } from './csv-channels';
+import type { TimeSource } from './csv-columns';
+import type { CsvRow } from './csv-row';
+import type { DecimalClock, LinearScale } from './decimal-clock';
 import { fourDigits, isFourDigits } from './digit-words';
 import type { DigitalRecorder } from './digital-recorder';
-import type { RowSpacing } from './row-times';
+import type { RowSpacing } from './row-spacing';
 
 const ZERO = 0x30;
-/** Times of at most this many digits are exact doubles. */
-const MOST_DIGITS = 15;
 
 /** Where the parts of a row stand that was read cell by cell, as offsets from its first byte. */
-export interface RowShape {
+interface RowShape {
   /** Bytes of the row with its end of line. */
   readonly length: number;
   /** The time cell, without quotes. All channel cells stand behind it. */
   readonly timeStart: number;
   readonly timeEnd: number;
-  /** Place of the only character of each channel's cell. */
+  /** Place of the only character of each channel's cell, in rising order. */
   readonly cells: readonly number[];
+  /** 1 for each byte of a column that is no channel: other digits there mean nothing. */
+  readonly ignored: Uint8Array;
+}
+
+/** What of a table the rows need. */
+interface PredictedTable {
+  readonly time: TimeSource;
+  readonly fieldCount: number;
+  readonly clock: DecimalClock;
+  readonly channels: CsvChannels;
+  readonly lastTicks: number;
 }
 
 /**
@@ -31,7 +43,7 @@ export class PredictedRows {
   /** Rows taken by the last `take`. */
   rows = 0;
 
-  private shape: RowShape = { length: 0, timeStart: 0, timeEnd: 0, cells: [] };
+  private shape: RowShape = { length: 0, timeStart: 0, timeEnd: 0, cells: [], ignored: new Uint8Array(0) };
   private scale: LinearScale = { factor: 1, divisor: 1, origin: 0 };
   /** Four digits of the time that count the rows; what stands above and below them stays the same for many rows. */
   private window = 0;
@@ -42,24 +54,36 @@ export class PredictedRows {
     private readonly spacing: RowSpacing,
   ) {}
 
-  /** Prepares for rows like the one at `start`. False: rows of this shape must be read cell by cell. */
-  prepare(bytes: Uint8Array, start: number, shape: RowShape, scale: LinearScale, ticks: number): boolean {
-    if (shape.timeEnd - shape.timeStart > MOST_DIGITS || shape.length < 8) return false;
+  /**
+   * Prepares for rows like the one that was just taken; `next` is the offset behind its end of line, `timeScale` tells the digits
+   * after the point of its time. False: rows of this shape must be read cell by cell.
+   */
+  prepare(bytes: Uint8Array, row: CsvRow, next: number, table: PredictedTable, timeScale: number): boolean {
+    if (table.time.kind !== 'column' || table.channels.hasAnalog || next - row.start < 8) return false;
+    const timeStart = row.starts[table.time.index] - row.start;
+    const timeEnd = row.ends[table.time.index] - row.start;
+    const scale = table.clock.linear(timeEnd - timeStart, timeScale);
+    if (scale === null || !isDigit(bytes[row.start + timeStart])) return false;
+    const shape = findShape(row, next - row.start, timeStart, timeEnd, table);
+    if (shape === null || !this.placeWindow(bytes, row.start, shape, scale)) return false;
+    this.shape = shape;
+    this.scale = scale;
+    this.ticks = table.lastTicks;
+    return true;
+  }
+
+  /** Finds the four digits of the time that count the rows. */
+  private placeWindow(bytes: Uint8Array, start: number, shape: RowShape, scale: LinearScale): boolean {
     let zeros = 0;
     // Digits below the step of the samples never change.
     let step = (this.spacing.usual * scale.divisor) / scale.factor;
     for (; step >= 10 && step % 10 === 0; step /= 10) zeros += 1;
     const ticksPerWindowStep = (scale.factor * 10 ** zeros) / scale.divisor;
-    if (!Number.isInteger(ticksPerWindowStep)) return false;
     const window = shape.timeEnd - zeros - 4;
-    if (window < shape.timeStart) return false;
+    if (!Number.isInteger(ticksPerWindowStep) || window < shape.timeStart) return false;
     for (let i = window; i < shape.timeEnd; i++) if (!isDigit(bytes[start + i])) return false;
-    if (!isDigit(bytes[start + shape.timeStart])) return false;
-    this.shape = shape;
-    this.scale = scale;
     this.window = window;
     this.ticksPerWindowStep = ticksPerWindowStep;
-    this.ticks = ticks;
     return true;
   }
 
@@ -70,8 +94,18 @@ export class PredictedRows {
   take(bytes: Uint8Array, view: DataView, start: number): number {
     this.rows = 0;
     let i = start;
+    // Where rows never repeat the search for repetitions is left out for more and more of them.
+    let skips = 0;
+    let failures = 0;
     for (;;) {
-      i = this.takeUnchanged(bytes, view, i);
+      if (skips > 0) {
+        skips -= 1;
+      } else {
+        const repeated = this.takeUnchanged(bytes, view, i);
+        failures = repeated === i ? Math.min(failures + 1, 6) : 0;
+        skips = failures < 3 ? 0 : 1 << failures;
+        i = repeated;
+      }
       const next = this.takeChanged(bytes, i);
       if (next === i) return i;
       i = next;
@@ -156,7 +190,7 @@ export class PredictedRows {
 
   /** One row of the same shape in which more of the time or a level differs. Returns `start` where it has another shape. */
   private takeChanged(bytes: Uint8Array, start: number): number {
-    const { length, timeStart, timeEnd, cells } = this.shape;
+    const { length, timeStart, timeEnd, cells, ignored } = this.shape;
     const { recorders, spacing } = this;
     const end = start + length;
     if (end > bytes.length) return start;
@@ -164,21 +198,22 @@ export class PredictedRows {
     let digits = 0;
     for (let k = timeStart; k < timeEnd; k++) {
       const byte = bytes[start + k];
-      if (isDigit(byte)) {
-        if (!isDigit(bytes[before + k])) return start;
-        digits = digits * 10 + byte - ZERO;
-      } else if (byte !== bytes[before + k]) return start;
+      if (isDigit(byte) && isDigit(bytes[before + k])) digits = digits * 10 + byte - ZERO;
+      else if (byte !== bytes[before + k]) return start;
     }
     const ticks = (digits * this.scale.factor) / this.scale.divisor - this.scale.origin;
     if (ticks < this.ticks || !Number.isInteger(ticks)) return start;
-    for (let k = 0; k < timeStart; k++) if (bytes[start + k] !== bytes[before + k]) return start;
     let cell = 0;
-    for (let k = timeEnd; k < length; k++) {
+    for (let k = 0; k < length; k++) {
       const byte = bytes[start + k];
-      if (k === cells[cell]) {
+      if (k === timeStart) {
+        k = timeEnd - 1;
+      } else if (k === cells[cell]) {
         if (byte !== ZERO && byte !== ZERO + 1) return start;
         cell += 1;
-      } else if (byte !== bytes[before + k]) return start;
+      } else if (byte !== bytes[before + k]) {
+        if (ignored[k] === 0 || !isDigit(byte) || !isDigit(bytes[before + k])) return start;
+      }
     }
     let isUnchanged = true;
     for (let k = 0; k < recorders.length; k++) {
@@ -196,4 +231,29 @@ export class PredictedRows {
 
 function isDigit(byte: number): boolean {
   return byte >= ZERO && byte <= ZERO + 9;
+}
+
+/** Null: the row is not one of single characters behind a time. */
+function findShape(
+  row: CsvRow,
+  length: number,
+  timeStart: number,
+  timeEnd: number,
+  table: PredictedTable,
+): RowShape | null {
+  const cells: number[] = [];
+  const ignored = new Uint8Array(length).fill(0);
+  const { sinks } = table.channels;
+  for (let index = 0; index < table.fieldCount; index++) {
+    const from = row.starts[index] - row.start;
+    const to = row.ends[index] - row.start;
+    if (from === timeStart) continue;
+    if (sinks[cells.length]?.column.index !== index) {
+      ignored.fill(1, from, to);
+      continue;
+    }
+    if (to !== from + 1 || from < timeEnd) return null;
+    cells.push(from);
+  }
+  return { length, timeStart, timeEnd, cells, ignored };
 }

@@ -1,7 +1,8 @@
 import type { Capture } from './capture';
 import { CaptureError } from './capture-error';
 import { CsvReader } from './csv-reader';
-import type { FormatReader, KeepRule } from './format-reader';
+import type { FormatReader } from './format-reader';
+import { KeepRule } from './format-reader';
 import { findCharacterSet, findKind, SNIFFED_BYTES } from './sniff';
 import { intervalOfRate } from './stated-rate';
 import { Utf16Transcoder } from './utf16';
@@ -26,15 +27,14 @@ export interface ReadCaptureOptions extends CaptureReaderOptions {
  * `CaptureError`, and that only where nothing in the file can be used: other damage is listed in `Capture.defects`.
  */
 export class CaptureReader {
-  private readonly isKept: KeepRule;
+  private readonly keep: KeepRule;
   private head = new Uint8Array(0);
   private byteLength = 0;
   private transcoder: Utf16Transcoder | null = null;
   private reader: FormatReader | null = null;
 
   constructor(private readonly options: CaptureReaderOptions = {}) {
-    const { keep = [] } = options;
-    this.isKept = (name) => keep.some((wanted) => name.endsWith(wanted));
+    this.keep = new KeepRule(options.keep ?? []);
   }
 
   /** Takes the next bytes. The chunk is not kept. */
@@ -77,9 +77,9 @@ export class CaptureReader {
   }
 
   private makeReader(kind: ReturnType<typeof findKind>): FormatReader {
-    if (kind === 'vcd') return new VcdReader(this.isKept);
+    if (kind === 'vcd') return new VcdReader(this.keep);
     const { sampleRateHz } = this.options;
-    return new CsvReader(this.isKept, sampleRateHz === undefined ? null : intervalOfRate(sampleRateHz));
+    return new CsvReader(this.keep, sampleRateHz === undefined ? null : intervalOfRate(sampleRateHz));
   }
 
   private hand(reader: FormatReader, chunk: Uint8Array): void {

@@ -8,6 +8,9 @@ export type CharacterSet = 'bytes' | 'utf-16le' | 'utf-16be';
 /** As many bytes should be seen before judging; fewer only where the file is shorter. */
 export const SNIFFED_BYTES = 4096;
 
+/** Share of the bytes that may be control characters. */
+const TOLERATED_CONTROLS = 0.02;
+
 const SIGNATURES: readonly (readonly [readonly number[], string])[] = [
   [[0x89, 0x50, 0x4e, 0x47], 'a PNG picture'],
   [[0xff, 0xd8, 0xff], 'a JPEG picture'],
@@ -78,22 +81,21 @@ function hasControls(head: Uint8Array): boolean {
   return head.some(isControl);
 }
 
-/** Text has no control characters; a few are taken for damage. */
+/** Text has no control characters; a few are taken for damage, and zeros at its end for space that was never filled. */
 function refuseBinary(head: Uint8Array): void {
+  let end = head.length;
+  while (end > 0 && head[end - 1] === 0) end -= 1;
   let count = 0;
-  let first = -1;
-  for (let i = 0; i < head.length; i++) {
+  let first = end === 0 ? 0 : -1;
+  for (let i = 0; i < end; i++) {
     if (!isControl(head[i])) continue;
     if (first < 0) first = i;
     count += 1;
   }
-  if (count * 50 <= head.length) return;
+  if (first < 0 || (end > 0 && count <= Math.max(3, end * TOLERATED_CONTROLS))) return;
   const shown = head[first].toString(16).padStart(2, '0').toUpperCase();
-  throw new CaptureError(
-    'not-a-capture',
-    `the file is not text: it holds the byte ${shown}h and more like it`,
-    { byte: first },
-  );
+  const message = `the file is not text: it holds the byte ${shown}h and more like it`;
+  throw new CaptureError('not-a-capture', message, { byte: first });
 }
 
 function hasWord(head: Uint8Array, word: string): boolean {

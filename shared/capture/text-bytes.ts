@@ -1,8 +1,19 @@
+/** Arguments of one call that are safe on any engine. */
+const MOST_ARGUMENTS = 8192;
+
 /** Windows-1252 where it differs from Latin-1 does not matter for names: only µ (B5) and letters with accents occur. */
 function decodeLatin1(bytes: Uint8Array): string {
+  if (bytes.length <= MOST_ARGUMENTS) return String.fromCharCode(...bytes);
   let text = '';
-  for (const byte of bytes) text += String.fromCharCode(byte);
+  for (let i = 0; i < bytes.length; i += MOST_ARGUMENTS) {
+    text += String.fromCharCode(...bytes.subarray(i, i + MOST_ARGUMENTS));
+  }
   return text;
+}
+
+function isAscii(bytes: Uint8Array): boolean {
+  for (let i = 0; i < bytes.length; i++) if (bytes[i] >= 0x80) return false;
+  return true;
 }
 
 /**
@@ -10,6 +21,7 @@ function decodeLatin1(bytes: Uint8Array): string {
  * Source: RFC 3629 section 4 (overlong forms, surrogates and values above 10FFFFh are invalid).
  */
 export function decodeText(bytes: Uint8Array): string {
+  if (isAscii(bytes)) return decodeLatin1(bytes);
   let text = '';
   for (let i = 0; i < bytes.length;) {
     const first = bytes[i];

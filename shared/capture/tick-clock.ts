@@ -20,13 +20,15 @@ export interface TimeKeeper {
  */
 export class TickClock {
   isStarted = false;
-  /** Ticks of the latest stamp; after an unresolved one see `ticks()`. */
   private latest = 0;
   private origin = 0;
   private originUnits = 0n;
   private unitsPerTick = 1n;
-  /** The latest stamp in units since the origin, while ticks are not units. */
+  /** The latest stamp in units since the origin, once that passed 2⁵³. */
   private wide: bigint | null = null;
+  /** The latest stamp that was a whole number of ticks. */
+  private exact = 0;
+  /** The latest stamp is no whole number of ticks. */
   private isUnresolved = false;
 
   constructor(private readonly keepers: () => Iterable<TimeKeeper>) {}
@@ -48,7 +50,10 @@ export class TickClock {
     return this.advanceWide(BigInt(stamp) - this.originUnits);
   }
 
-  /** The latest stamp in ticks, exact. Throws `CaptureError` (`time-range`) where no whole number below 2⁵³ can hold it. */
+  /**
+   * The latest stamp in ticks, exact. Call it for times that are kept; see `roundedTicks`. Throws `CaptureError` (`time-range`) where
+   * no tick is exact for it and all kept times; the latest exact one is the present time then.
+   */
   ticks(): number {
     if (this.isUnresolved) this.resolve();
     return this.latest;
@@ -57,6 +62,16 @@ export class TickClock {
   /** The latest stamp in ticks, rounded up: for what need not be exact, such as the end of the record. */
   roundedTicks(): number {
     return this.latest;
+  }
+
+  /** The end of the record, after the last stamp: rounded up, and below 2⁵³. */
+  endTicks(): number {
+    if (this.wide === null || this.latest <= LARGEST) return this.latest;
+    const divisor = this.keptDivisor();
+    const ticks = divisor === 0n ? 1n : (this.wide + divisor - 1n) / divisor;
+    if (ticks > BigInt(LARGEST)) return LARGEST;
+    this.useDivisor(divisor === 0n ? this.wide : divisor);
+    return Number(ticks);
   }
 
   /** The stamp of tick 0 while ticks are units and stamps small numbers: `stamp − narrowOrigin` are ticks then. Else null. */
@@ -69,12 +84,6 @@ export class TickClock {
     this.latest = ticks;
   }
 
-  /** Ticks of the end of the record, after the last stamp. */
-  endTicks(): number {
-    if (this.latest > LARGEST) this.resolve();
-    return this.latest;
-  }
-
   timeBase(unitNumerator: bigint, unitDenominator: bigint): TimeBase {
     return { unitNumerator, unitDenominator, originUnits: this.originUnits, unitsPerTick: this.unitsPerTick };
   }
@@ -85,36 +94,50 @@ export class TickClock {
   }
 
   private advanceWide(units: bigint): boolean {
-    const latest = this.wide ?? BigInt(this.latest);
-    if (units < latest) return false;
+    if (units < (this.wide ?? BigInt(this.latest))) return false;
     if (this.wide === null && units <= BigInt(LARGEST)) {
       this.latest = Number(units);
       return true;
     }
     this.wide = units;
+    if (!this.isUnresolved) this.exact = this.latest;
     const whole = units / this.unitsPerTick;
     this.isUnresolved = whole * this.unitsPerTick !== units || whole > BigInt(LARGEST);
     this.latest = Number(this.isUnresolved ? whole + 1n : whole);
     return true;
   }
 
+  /** Changes the tick to the common divisor of all kept times and the latest one. */
   private resolve(): void {
     const units = this.wide ?? 0n;
-    let divisor = units;
-    for (const keeper of this.keepers()) {
-      if (divisor === 1n) break;
-      keeper.forEachTime((time) => {
-        if (divisor > 1n) divisor = greatestCommonDivisor(divisor, BigInt(time) * this.unitsPerTick);
-      });
-    }
-    const ticks = units / divisor;
-    if (ticks > BigInt(LARGEST)) {
+    const divisor = greatestCommonDivisor(units, this.keptDivisor());
+    if (units / divisor > BigInt(LARGEST)) {
+      this.latest = this.exact;
+      this.isUnresolved = false;
       throw new CaptureError('time-range', 'the times span more than 2⁵³ steps: too many to keep them exact');
     }
-    const old = this.unitsPerTick;
-    for (const keeper of this.keepers()) keeper.scaleTimes((time) => Number((BigInt(time) * old) / divisor));
-    this.unitsPerTick = divisor;
-    this.latest = Number(ticks);
+    this.useDivisor(divisor);
+    this.latest = Number(units / divisor);
     this.isUnresolved = false;
+  }
+
+  private keptDivisor(): bigint {
+    let divisor = 0n;
+    for (const keeper of this.keepers()) {
+      keeper.forEachTime((time) => {
+        if (divisor !== this.unitsPerTick)
+          divisor = greatestCommonDivisor(divisor, BigInt(time) * this.unitsPerTick);
+      });
+      if (divisor === this.unitsPerTick) break;
+    }
+    return divisor;
+  }
+
+  private useDivisor(divisor: bigint): void {
+    const old = this.unitsPerTick;
+    this.unitsPerTick = divisor;
+    if (old === divisor) return;
+    for (const keeper of this.keepers()) keeper.scaleTimes((time) => Number((BigInt(time) * old) / divisor));
+    this.exact = Number((BigInt(this.exact) * old) / divisor);
   }
 }

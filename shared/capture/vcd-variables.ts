@@ -2,11 +2,16 @@ import { CaptureError } from './capture-error';
 import { SteppedRecorder } from './analog-recorder';
 import type { RecorderClock } from './digital-recorder';
 import { DigitalRecorder } from './digital-recorder';
+import type { KeepRule } from './format-reader';
 
 /** Vectors wider than this are memories or buses, not ports: their bits become no channels. */
 const WIDEST_SPLIT_VECTOR = 1024;
-const MOST_CHANNELS = 400_000;
+/** Dumps of large designs hold millions of bits: beyond this number only vectors that are asked for are split. */
+const MOST_SPLIT_BITS = 20_000;
+const MOST_VARIABLES = 500_000;
 const MOST_NAME_CHARACTERS = 64_000_000;
+/** Names of one net that are kept: a clock may have one in each of a hundred thousand scopes. */
+const MOST_ALIASES = 256;
 
 /** What stands behind an identifier code. */
 export type VcdVariable =
@@ -40,10 +45,11 @@ export class VcdVariables {
   /** Index + 1 by the characters of codes of up to three; 0 where there is none. */
   readonly indexByShortCode = new Int32Array(95 * 95 * 95);
   private nameCharacters = 0;
+  private splitBits = 0;
 
   constructor(
     private readonly clock: RecorderClock,
-    private readonly isKept: (name: string) => boolean,
+    private readonly keep: KeepRule,
   ) {}
 
   get channelCount(): number {
@@ -51,12 +57,14 @@ export class VcdVariables {
   }
 
   declare(declaration: VcdDeclaration): void {
-    this.nameCharacters += declaration.name.length * Math.min(declaration.size, WIDEST_SPLIT_VECTOR);
     const known = this.indexByCode.get(declaration.code);
     if (known !== undefined) this.addAlias(this.list[known], declaration);
     else this.addVariable(declaration);
-    if (this.channelCount > MOST_CHANNELS || this.nameCharacters > MOST_NAME_CHARACTERS) {
-      throw new CaptureError('too-many-channels', `more than ${this.channelCount} channels are declared`);
+    if (this.list.length > MOST_VARIABLES || this.nameCharacters > MOST_NAME_CHARACTERS) {
+      throw new CaptureError(
+        'too-many-channels',
+        `more than ${this.list.length} variables are declared: too many`,
+      );
     }
   }
 
@@ -90,16 +98,26 @@ export class VcdVariables {
   private makeVariable(declaration: VcdDeclaration): VcdVariable {
     if (IGNORED_TYPES.has(declaration.type)) return { kind: 'ignored' };
     if (REAL_TYPES.has(declaration.type)) {
+      this.nameCharacters += declaration.name.length;
       const recorder = new SteppedRecorder(declaration.name);
       this.analog.push(recorder);
       return { kind: 'real', recorder };
     }
-    if (declaration.size > WIDEST_SPLIT_VECTOR || declaration.size < 1) return { kind: 'ignored' };
+    if (!this.isSplit(declaration)) return { kind: 'ignored' };
+    this.nameCharacters += declaration.name.length * declaration.size;
+    if (declaration.size > 1) this.splitBits += declaration.size;
     const bits = bitNames(declaration).map(
-      (name) => new DigitalRecorder(name, this.clock, this.isKept(name)),
+      (name) => new DigitalRecorder(name, this.clock, this.keep.isKept(name)),
     );
     this.digital.push(...bits);
     return { kind: 'bits', size: declaration.size, bits };
+  }
+
+  private isSplit(declaration: VcdDeclaration): boolean {
+    const { size } = declaration;
+    if (size < 2) return size === 1;
+    if (size > WIDEST_SPLIT_VECTOR) return false;
+    return this.splitBits + size <= MOST_SPLIT_BITS || this.keep.isBitKept(declaration.name);
   }
 
   private addAlias(variable: VcdVariable, declaration: VcdDeclaration): void {
@@ -110,13 +128,14 @@ export class VcdVariables {
     }
     bitNames({ ...declaration, size: variable.size }).forEach((name, i) => {
       addName(variable.bits[i], name);
-      if (this.isKept(name)) variable.bits[i].isKept = true;
+      if (this.keep.isKept(name)) variable.bits[i].isKept = true;
     });
   }
 }
 
 function addName(recorder: { readonly name: string; readonly aliases: string[] }, name: string): void {
-  if (recorder.name !== name && !recorder.aliases.includes(name)) recorder.aliases.push(name);
+  if (recorder.aliases.length >= MOST_ALIASES || recorder.name === name) return;
+  if (!recorder.aliases.includes(name)) recorder.aliases.push(name);
 }
 
 /** Names of the bits, the most significant first. A one-bit vector keeps its plain name, one selected bit carries its number. */
