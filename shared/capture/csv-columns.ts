@@ -38,24 +38,35 @@ const COUNT_WORDS = new Set(
     ' ',
   ),
 );
-const TIME_UNIT_PLACES: Readonly<Record<string, number>> = {
-  s: 0, sec: 0, secs: 0, second: 0, seconds: 0, sekunden: 0, sekunde: 0,
-  ms: 3, msec: 3, millis: 3, millisecond: 3, milliseconds: 3, millisekunden: 3,
-  us: 6, usec: 6, µs: 6, μs: 6, micros: 6, microsecond: 6, microseconds: 6, mikrosekunden: 6,
-  ns: 9, nsec: 9, nanos: 9, nanosecond: 9, nanoseconds: 9, nanosekunden: 9,
-  ps: 12, picoseconds: 12, fs: 15,
-}; // prettier-ignore
-const VOLT_UNITS: Readonly<Record<string, number>> = { v: 1, volt: 1, volts: 1, mv: 1e-3, millivolt: 1e-3, millivolts: 1e-3, kv: 1e3, uv: 1e-6, µv: 1e-6 }; // prettier-ignore
+function wordMap<T>(entries: readonly (readonly [string, T])[]): ReadonlyMap<string, T> {
+  return new Map(
+    entries.flatMap(([words, value]) => words.split(' ').map((word): [string, T] => [word, value])),
+  );
+}
 
-const LEVEL_WORDS: Readonly<Record<string, number>> = {
-  '0': LOW, l: LOW, low: LOW, false: LOW, off: LOW,
-  '1': HIGH, h: HIGH, high: HIGH, true: HIGH, on: HIGH,
-  x: UNKNOWN, z: UNKNOWN, u: UNKNOWN, w: UNKNOWN, '?': UNKNOWN, '-': UNKNOWN,
-}; // prettier-ignore
+const TIME_UNIT_PLACES = wordMap<number>([
+  ['s sec secs second seconds sekunde sekunden', 0],
+  ['ms msec millis millisecond milliseconds millisekunden', 3],
+  ['us usec µs μs micros microsecond microseconds mikrosekunden', 6],
+  ['ns nsec nanos nanosecond nanoseconds nanosekunden', 9],
+  ['ps picoseconds', 12],
+  ['fs femtoseconds', 15],
+]);
+const VOLT_UNITS = wordMap<number>([
+  ['v volt volts', 1],
+  ['mv millivolt millivolts', 1e-3],
+  ['kv', 1e3],
+  ['uv µv μv', 1e-6],
+]);
+const LEVEL_WORDS = wordMap<number>([
+  ['0 l low false off', LOW],
+  ['1 h high true on', HIGH],
+  ['x z u w ? -', UNKNOWN],
+]);
 
 /** Level a cell of a digital column states; undefined where it states none. Accepts `0`, `1.0`, `H`, `low`, `TRUE`, `x`. */
 export function levelOfText(text: string): number | undefined {
-  const word = LEVEL_WORDS[text.toLowerCase()];
+  const word = LEVEL_WORDS.get(text.toLowerCase());
   if (word !== undefined) return word;
   if (/^[+-]?0+([.,]0*)?$/.test(text)) return LOW;
   return /^\+?0*1([.,]0*)?$/.test(text) ? HIGH : undefined;
@@ -69,9 +80,7 @@ export function isNumberText(text: string): boolean {
 
 /** Decimal places of a time unit in seconds; undefined for a word that is none. */
 export function placesOfTimeUnit(word: string): number | undefined {
-  return Object.hasOwn(TIME_UNIT_PLACES, word.toLowerCase())
-    ? TIME_UNIT_PLACES[word.toLowerCase()]
-    : undefined;
+  return TIME_UNIT_PLACES.get(word.toLowerCase());
 }
 
 /** The unit at the end of a header: `t (ns)`, `Time [s]`, `Zeit_ms`, `Time/us`, or the whole of it. */
@@ -145,8 +154,9 @@ export function assignColumns(
   });
   const channels = names
     .map((name, index): CsvColumn => {
-      const volts = VOLT_UNITS[units[index]];
-      const isAnalog = !facts[index].isDigital || (volts !== undefined && !/^v$/i.test(name));
+      const volts = VOLT_UNITS.get(units[index]);
+      const saysVolts = volts !== undefined && (/[[({]/.test(name) || (unitRow[index] ?? '') !== '');
+      const isAnalog = !facts[index].isDigital || saysVolts;
       return {
         index,
         name: name || `column ${index + 1}`,
@@ -175,9 +185,12 @@ function findTime(
   const asColumn = (index: number): TimeSource => ({
     kind: 'column', index, places: places[index] ?? null, isInteger: facts[index].isInteger,
   }); // prettier-ignore
-  const mayBeTime = (i: number): boolean =>
-    facts[i].isRising && (facts[i].distinct > 2 || !facts[i].isDigital);
   const words = names.map(wordsOfHeader);
+  const isSpelledOut = (i: number): boolean =>
+    words[i].some((word) => TIME_WORDS.has(word) && word.length > 3);
+  // The few times of a short table may look like levels; nobody calls a channel “time”.
+  const mayBeTime = (i: number): boolean =>
+    facts[i].isRising && (facts[i].distinct > 2 || !facts[i].isDigital || isSpelledOut(i));
   const isTimeName = (i: number): boolean =>
     words[i].some((word) => TIME_WORDS.has(word)) ||
     (places[i] !== undefined && (words[i].length <= 2 || names[i].includes('(') || names[i].includes('[')));
