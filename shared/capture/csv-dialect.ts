@@ -118,7 +118,7 @@ function refuseUnreadable(best: Reading, readings: readonly Reading[], bytes: Ui
     best.rowCount === 0 || best.rowCount * 4 < filled.length || (best.fieldCount === 1 && best.rowCount < 8);
   if (!isProse) return;
   const header = readings.find(
-    ({ records }) => records.length <= 3 && records.some(({ cells }) => cells.length > 1),
+    ({ records }) => records.length <= 3 && records.some(({ cells }) => isHeader(cells)),
   );
   if (best.rowCount === 0 && header !== undefined && filled.length <= 2) {
     throw new CaptureError('no-rows', 'the table has a header but no rows of numbers or levels', {
@@ -132,6 +132,14 @@ function refuseUnreadable(best: Reading, readings: readonly Reading[], bytes: Ui
     'not-a-capture',
     `no rows of numbers or levels follow; the text begins with ${shown}`,
     { line: first.line, byte: first.start },
+  );
+}
+
+/** Short words, one of which says time or carries a unit. */
+function isHeader(cells: readonly string[]): boolean {
+  const isShort = cells.length > 1 && cells.every((cell) => cell.length <= 40);
+  return (
+    isShort && cells.some((cell) => /^#?\s*(t|time|zeit|timestamp|sample|index)\b|[[(]\w+[\])]$/i.test(cell))
   );
 }
 
@@ -195,6 +203,9 @@ interface Head {
   readonly firstRow: number;
 }
 
+/** Rows of units and damaged rows between header and data are looked through up to this many lines. */
+const FARTHEST_HEADER = 6;
+
 /** The header is the last line of text above the rows that has a name for each column; a row of units may stand below it. */
 function findHeader(
   records: readonly CsvRecord[],
@@ -202,27 +213,41 @@ function findHeader(
   fieldCount: number,
   separator: string,
 ): Head {
-  let units: readonly string[] = [];
-  let firstRow = first;
-  for (let i = first - 1; i >= 0 && i >= first - 6; i--) {
-    const cells = withoutMark(withoutTrailing(records[i].cells));
-    if (cells.length === 0 || (cells.length < fieldCount - 1 && !isNearHeader(cells, fieldCount))) continue;
-    if (
-      cells.every((cell) => UNIT_CELL.test(cell)) &&
-      i > 0 &&
-      records[i - 1].cells.length >= fieldCount - 1
-    ) {
-      units = cells;
-      continue;
-    }
-    const dataCells = cells.filter((cell) => cell !== '' && isDataCell(cell)).length;
-    if (dataCells * 2 <= cells.length || /^(t|time|zeit)/i.test(cells[0])) {
-      return { names: Array.from({ length: fieldCount }, (_, k) => cells[k] ?? ''), units, firstRow };
-    }
-    // A damaged row: reading begins with it, so that it is reported.
-    if (!isComment(records[i], separator)) firstRow = i;
-  }
-  return { names: Array.from({ length: fieldCount }, () => ''), units: [], firstRow };
+  const isPossible = (cells: readonly string[]): boolean =>
+    cells.length > 0 && (cells.length >= fieldCount - 1 || isNearHeader(cells, fieldCount));
+  const above = Array.from({ length: Math.min(first, FARTHEST_HEADER) }, (_, k) => first - 1 - k);
+  const cellsOf = (i: number): readonly string[] => withoutMark(withoutTrailing(records[i].cells));
+  const candidates = above.filter((i) => isPossible(cellsOf(i)) && !isUnitRow(records[i].cells, fieldCount));
+  const header =
+    candidates.find((i) => isNames(cellsOf(i))) ??
+    candidates.find((i) => cellsOf(i).filter(isDataCell).length * 2 <= cellsOf(i).length);
+  if (header === undefined)
+    return { names: Array.from({ length: fieldCount }, () => ''), units: [], firstRow: first };
+  const between = above.filter((i) => i > header);
+  const unitRow = between.find((i) => isUnitRow(records[i].cells, fieldCount));
+  // Damaged rows: reading begins with them, so that they are reported.
+  const damaged = between.filter(
+    (i) => i !== unitRow && cellsOf(i).length > 0 && !isComment(records[i], separator),
+  );
+  return {
+    names: Array.from({ length: fieldCount }, (_, k) => cellsOf(header)[k] ?? ''),
+    units: unitRow === undefined ? [] : withoutMark(records[unitRow].cells),
+    firstRow: Math.min(first, ...damaged),
+  };
+}
+
+/** Names only, or a time beside names that may be numbers. */
+function isNames(cells: readonly string[]): boolean {
+  return !cells.some((cell) => cell !== '' && isDataCell(cell)) || /^(t|time|zeit)\b/i.test(cells[0]);
+}
+
+function isUnitRow(cells: readonly string[], fieldCount: number): boolean {
+  const filled = withoutMark(cells);
+  return (
+    filled.length >= fieldCount - 1 &&
+    filled.some((cell) => cell !== '') &&
+    filled.every((cell) => UNIT_CELL.test(cell))
+  );
 }
 
 function isNearHeader(cells: readonly string[], fieldCount: number): boolean {

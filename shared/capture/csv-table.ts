@@ -28,7 +28,7 @@ export class CsvTable {
   readonly hasComma: boolean;
   readonly clock: DecimalClock;
   readonly channels: CsvChannels;
-  readonly spacing = new RowSpacing();
+  readonly spacing = new RowSpacing(() => this.clock.unitTicks);
   readonly predicted: PredictedRows;
   /** Time of the last row taken. */
   lastTicks = 0;

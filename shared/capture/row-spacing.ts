@@ -1,7 +1,8 @@
 /** Rows that deviate less than this from the usual interval count as evenly spaced. */
 const EVEN_SHARE = 0.01;
-/** Rounding of printed times moves a row by up to one unit either way. */
+/** Rounding of printed times moves a row by up to one unit either way, which means nothing where the interval is hardly larger. */
 const EVEN_UNITS = 1.5;
+const LARGEST_EVEN_SHARE = 0.4;
 
 /** Shares of rows without any change that speak for samples, and numbers of spacings that make chance unlikely (house). */
 const OFTEN_UNCHANGED = 0.3;
@@ -20,8 +21,12 @@ export class RowSpacing {
   private evenSum = 0;
   private last = 0;
   private early: number[] = [];
+  private tolerance = 0;
   /** The interval most rows have, in ticks; 0 until enough rows are seen. */
   usual = 0;
+
+  /** `unitTicks`: the smallest step that times are written in, in ticks. */
+  constructor(private readonly unitTicks: () => number) {}
 
   /** A row at `ticks`. `isUnchanged`: no channel changed with it. */
   take(ticks: number, isUnchanged: boolean): void {
@@ -72,6 +77,7 @@ export class RowSpacing {
     this.early = this.early.map(scale);
     this.last = scale(this.last);
     this.usual = scale(this.usual);
+    this.setTolerance();
     this.evenSum = scale(this.evenSum);
   }
 
@@ -100,6 +106,7 @@ export class RowSpacing {
   private settle(): void {
     const sorted = [...this.early].sort((a, b) => a - b);
     this.usual = sorted[sorted.length >> 1] ?? 0;
+    this.setTolerance();
     for (const delta of this.early) {
       if (!this.isEven(delta)) continue;
       this.evenRows += 1;
@@ -107,7 +114,12 @@ export class RowSpacing {
     }
   }
 
+  private setTolerance(): void {
+    const rounding = Math.min(EVEN_UNITS * this.unitTicks(), this.usual * LARGEST_EVEN_SHARE);
+    this.tolerance = Math.max(rounding, this.usual * EVEN_SHARE);
+  }
+
   private isEven(delta: number): boolean {
-    return delta > 0 && Math.abs(delta - this.usual) <= Math.max(EVEN_UNITS, this.usual * EVEN_SHARE);
+    return delta > 0 && Math.abs(delta - this.usual) <= this.tolerance;
   }
 }

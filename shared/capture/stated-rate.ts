@@ -16,10 +16,14 @@ const TIME_UNITS: Readonly<Record<string, number>> = {
   ps: 12,
 };
 
-/** A decimal number as an exact ratio; null where the text is none. Accepts a decimal comma and `50,000` for fifty thousand. */
-export function parseRatio(text: string): SampleInterval | null {
+/**
+ * A decimal number as an exact ratio; null where the text is none. Accepts a decimal comma. `hasGroups`: digits stand in groups of
+ * three, `50,000` is fifty thousand.
+ */
+export function parseRatio(text: string, hasGroups = false): SampleInterval | null {
   let plain = text.trim().replace(/[ _'](?=\d{3}(\D|$))/g, '');
-  if (/^\d{1,3}(,\d{3})+(\.\d+)?$/.test(plain)) plain = plain.replace(/,/g, '');
+  if (/^\d{1,3}([.,]\d{3}){2,}$/.test(plain) || hasGroups) plain = plain.replace(/[,.](?=\d{3}(\D|$))/g, '');
+  else if (/^\d{1,3}(,\d{3})+\.\d+$/.test(plain)) plain = plain.replace(/,/g, '');
   else plain = plain.replace(',', '.');
   const [, whole, fraction = '', exponent = '0'] =
     /^\+?(\d*)(?:\.(\d*))?(?:e([+-]?\d{1,2}))?$/i.exec(plain) ?? [];
@@ -49,7 +53,7 @@ const INTERVAL = new RegExp(
   'i',
 );
 const RATE_UNIT = String.raw`\s*([kKmMgG])?\s*(Hz|Hertz|Sa?\/s\w*|sps|samples?\s*(?:\/|per)\s*s\w*)`;
-const TIME_UNIT = String.raw`\s*(ms|us|µs|μs|ns|ps|sec|s)\b`;
+const TIME_UNIT = String.raw`[\s",;|]*(ms|us|µs|μs|ns|ps|sec|s)\b`;
 
 /**
  * Looks in a line of preamble or comment for a sample rate or interval: `Sample rate: 50 kHz`, `# interval 20 us`,
@@ -69,10 +73,16 @@ function findRate(rest: string): SampleInterval | null {
     new RegExp(String.raw`^[\s_]*[[(]\s*([kKmMgG]?)(?:Hz|Sa?\/s|sps)\s*[\])]`).exec(rest) ?? [];
   const after = rest.replace(/^[\s_]*[[(][^\])]*[\])]/, '');
   const found = new RegExp('^' + GAP + NUMBER + `(?:${RATE_UNIT})?`, 'i').exec(after);
-  const ratio = found === null ? null : parseRatio(found[1]);
-  if (found === null || ratio === null) return null;
+  if (found === null) return null;
   const exponent = PREFIXES[found[2] ?? labelPrefix] ?? 0;
+  const ratio = parseRatio(found[1], exponent === 0 && isGrouped(found[1]));
+  if (ratio === null) return null;
   return { numerator: ratio.denominator, denominator: ratio.numerator * 10n ** BigInt(exponent) };
+}
+
+/** `50,000 Hz` has a comma for thousands, and so has the point in `50.000 Hz`: no line is sampled fifty times a second. */
+function isGrouped(number: string): boolean {
+  return /^\d{1,3}[,.]\d{3}$/.test(number.trim());
 }
 
 function findInterval(rest: string): SampleInterval | null {
