@@ -203,4 +203,22 @@ describe('the fast reader of dumps', () => {
       { numRuns: RUNS },
     );
   });
+
+  it('counts the changes of a clock too busy to be kept as the other does', () => {
+    const lines = [
+      '$timescale 1 us $end $var wire 1 ! c $end $var wire 1 " d $end $enddefinitions $end',
+      '#0',
+      '0!',
+      '0"',
+    ];
+    for (let i = 1; i <= 300_000; i++) {
+      lines.push(`#${99_700_000 + i * 3}`, `${i & 1}!`);
+      if (i % 30_000 === 0)
+        lines.push('0!', '1!', `${(i / 30_000) & 1}"`, `#${99_700_000 + i * 3}`, `${(i >> 1) & 1}!`);
+    }
+    const bytes = bytesOf(`${lines.join('\n')}\n`);
+    const fast = outcomeOf(new VcdReader(NONE), bytes, 65_536);
+    expect(fast).toEqual(outcomeOf(new VcdReader(NONE, false), bytes, 65_536));
+    expect(fast).toMatchObject({ channels: [{ isTooBusy: true }, { isTooBusy: false }] });
+  });
 });

@@ -8,6 +8,9 @@ export type CharacterSet = 'bytes' | 'utf-16le' | 'utf-16be';
 /** As many bytes should be seen before judging; fewer only where the file is shorter. */
 export const SNIFFED_BYTES = 4096;
 
+/** Share of the characters of a header that are letters of the first 256, whatever the language. */
+const MOSTLY_LATIN = 0.7;
+
 /** Share of the bytes that may be control characters. */
 const TOLERATED_CONTROLS = 0.02;
 
@@ -42,8 +45,9 @@ export function findCharacterSet(head: Uint8Array): CharacterSet {
     if (head[i] === 0) evenZeros += 1;
     if (head[i + 1] === 0) oddZeros += 1;
   }
-  if (oddZeros * 2 === looked && evenZeros === 0) return 'utf-16le';
-  if (evenZeros * 2 === looked && oddZeros === 0) return 'utf-16be';
+  const most = (looked / 2) * MOSTLY_LATIN;
+  if (oddZeros >= most && evenZeros === 0) return 'utf-16le';
+  if (evenZeros >= most && oddZeros === 0) return 'utf-16be';
   return 'bytes';
 }
 
