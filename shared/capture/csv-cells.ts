@@ -57,7 +57,7 @@ export class CsvCells {
     const level = to - from > LONGEST_CELL ? undefined : levelOfText(decodeText(bytes.subarray(from, to)));
     if (level !== undefined) return level;
     this.hasBadCell = true;
-    this.report('bad-level', from, to, sink.column.name);
+    this.report('bad-level', from, to, oneLine(sink.column.name));
     return UNKNOWN;
   }
 
@@ -71,7 +71,7 @@ export class CsvCells {
       // What instruments write for a value out of range or not taken.
       if (!/^[+-]?(nan|inf(inity)?|-+|\*+)$/i.test(text)) {
         this.hasBadCell = true;
-        this.report('bad-value', from, to, sink.column.name);
+        this.report('bad-value', from, to, oneLine(sink.column.name));
       }
       sink.value = NaN;
     }
@@ -83,4 +83,9 @@ const POWERS = Array.from({ length: 16 }, (_, i) => 10 ** i);
 
 function toDouble({ mantissa, scale }: DecimalNumber): number {
   return scale >= 0 && scale < 16 ? mantissa / POWERS[scale] : mantissa * 10 ** -scale;
+}
+
+/** A name may hold line breaks, a message may not. */
+function oneLine(name: string): string {
+  return name.replace(/\s+/g, ' ');
 }

@@ -7,6 +7,7 @@ import type { DigitalRecorder } from './digital-recorder';
 import type { RowSpacing } from './row-spacing';
 
 const ZERO = 0x30;
+const NINE = 0x39;
 
 /** Where the parts of a row stand that was read cell by cell, as offsets from its first byte. */
 interface RowShape {
@@ -155,12 +156,11 @@ export class PredictedRows {
       if (hasMiddle && !this.isMiddleEqual(bytes, i)) break;
       const expected = (word + wordStep) | 0;
       word = view.getInt32(i + window, true);
-      if (word === expected && (word & 0x0f000000) <= 0x09000000) {
+      if (word === expected && word >> 24 <= NINE) {
         value = (value + usualStep) | 0;
         continue;
       }
-      if ((((word & 0xf0f0f0f0) ^ 0x30303030) | (((word & 0x0f0f0f0f) + 0x06060606) & 0x10101010)) !== 0)
-        break;
+      if (!isFourDigits(word)) break;
       const next = fourDigits(word);
       const step = (next - value) | 0;
       if (step !== usualStep) {

@@ -12,8 +12,7 @@ function decodeLatin1(bytes: Uint8Array): string {
 }
 
 function isAscii(bytes: Uint8Array): boolean {
-  for (let i = 0; i < bytes.length; i++) if (bytes[i] >= 0x80) return false;
-  return true;
+  return bytes.every((byte) => byte < 0x80);
 }
 
 /**

@@ -1,6 +1,5 @@
 import { CaptureError } from './capture-error';
-import type { Place } from './defect-list';
-import { DefectList } from './defect-list';
+import type { DefectList, Place } from './defect-list';
 import { quoteForMessage, decodeText } from './text-bytes';
 import type { VcdVariables } from './vcd-variables';
 
