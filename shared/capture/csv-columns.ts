@@ -11,12 +11,13 @@ export interface CsvColumn {
 
 /** Where the time of a row comes from. */
 export type TimeSource =
-  /** A column of times; `places`: 3 for milliseconds; null where no unit is stated. */
+  /** A column of times; `places`: 3 for milliseconds; null where no unit is stated. `usualStep`: from row to row, in its unit. */
   | {
       readonly kind: 'column';
       readonly index: number;
       readonly places: number | null;
       readonly isInteger: boolean;
+      readonly usualStep: number;
     }
   /** A column that counts samples. */
   | { readonly kind: 'counts'; readonly index: number }
@@ -72,7 +73,7 @@ export function levelOfText(text: string): number | undefined {
   return /^\+?0*1([.,]0*)?$/.test(text) ? HIGH : undefined;
 }
 
-const NUMBER = /^[+-]?(\d+([.,]\d*)?|[.,]\d+)(e[+-]?\d+)?$/i;
+const NUMBER = /^[+-]?(\d+([.,]\d*)?|[.,]\d+|\d{1,3}((,\d{3})+\.|(\.\d{3})+,)\d*)(e[+-]?\d+)?$/i;
 
 export function isNumberText(text: string): boolean {
   return NUMBER.test(text);
@@ -103,7 +104,9 @@ function unitsOf(names: readonly string[], units: readonly string[]): string[] {
 }
 
 function toNumber(text: string): number {
-  return text === '' ? NaN : Number(text.replace(',', '.'));
+  const isGrouped = text.includes(',') && text.includes('.');
+  const plain = isGrouped ? text.replaceAll(text.indexOf(',') < text.indexOf('.') ? ',' : '.', '') : text;
+  return plain === '' ? NaN : Number(plain.replace(',', '.'));
 }
 
 interface ColumnFacts {
@@ -115,6 +118,13 @@ interface ColumnFacts {
   /** All filled cells state levels. */
   readonly isDigital: boolean;
   readonly distinct: number;
+  /** Median difference of neighbours; NaN where there are none. */
+  readonly usualStep: number;
+}
+
+function medianStep(numbers: readonly number[]): number {
+  const steps = numbers.slice(1).map((value, i) => value - numbers[i]);
+  return steps.sort((a, b) => a - b)[steps.length >> 1] ?? NaN;
 }
 
 function lookAt(cells: readonly string[]): ColumnFacts {
@@ -132,6 +142,7 @@ function lookAt(cells: readonly string[]): ColumnFacts {
     isDigital:
       filled.length === 0 || isAlmostAll(filled.filter((cell) => levelOfText(cell) !== undefined).length),
     distinct: new Set(filled).size,
+    usualStep: medianStep(numbers),
   };
 }
 
@@ -183,7 +194,7 @@ function findTime(
 ): TimeSource {
   const places = units.map(placesOfTimeUnit);
   const asColumn = (index: number): TimeSource => ({
-    kind: 'column', index, places: places[index] ?? null, isInteger: facts[index].isInteger,
+    kind: 'column', index, places: places[index] ?? null, isInteger: facts[index].isInteger, usualStep: facts[index].usualStep,
   }); // prettier-ignore
   const words = names.map(wordsOfHeader);
   const isSpelledOut = (i: number): boolean =>

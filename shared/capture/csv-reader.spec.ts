@@ -131,6 +131,12 @@ describe('the time column', () => {
     expectRows(readText(`Time,a,b\nus,bool,bool\n${rows}`));
   });
 
+  it('may have its thousands apart', () => {
+    const capture = readText('t (ms);a\n998,5;1\n1.000,25;0\n1.001,5;1\n');
+    expect(edgesUs(capture, 'a')).toBe('1 0@1750 1@3000');
+    expect(edgesUs(readText('t (ms);a\n998.5;1\n1,000.25;0\n1,001.5;1\n'), 'a')).toBe('1 0@1750 1@3000');
+  });
+
   it('takes its unit from the preamble', () => {
     expectRows(
       readText(
@@ -261,6 +267,19 @@ describe('a stated sample rate', () => {
     expect(edgesUs(readText('time,a\n100,1\n1100,0\n1933,1\n2766,0\n', { sampleRateHz: 1e6 }), 'a')).toBe(
       '1 0@1000 1@1833 0@2666',
     );
+  });
+
+  it('tells the unit of a time column that states none', () => {
+    const rows = (write: (i: number) => string): string =>
+      `# Interval: 20 us\nTime,a\n${Array.from({ length: 40 }, (_, i) => `${write(i)},${(i >> 2) & 1}`).join('\n')}\n`;
+    for (const text of [
+      rows((i) => (i * 0.02).toFixed(2)),
+      rows((i) => `${i * 20}`),
+      rows((i) => (i * 2e-5).toFixed(5)),
+      rows((i) => `${i}`),
+    ]) {
+      expect(edgesUs(readText(text), 'a')).toMatch(/^0 1@80 0@160 1@240 /);
+    }
   });
 
   it.each([

@@ -14,6 +14,9 @@ import type { TimeBase } from '../time/time-base';
 /** A stated interval is cut off at this many decimal places of itself where times span too much. */
 const PLACES_OF_COUNTS = 9;
 
+/** Times are printed with few digits: steps may differ from the stated interval by this share. */
+const UNIT_TOLERANCE = 0.05;
+
 /** Seconds of one unit of the time source, as an exact ratio, and its decimal places where it has some. */
 interface TimeUnit extends SampleInterval {
   readonly places: number;
@@ -77,7 +80,7 @@ export class CsvTable {
 function findUnit(dialect: CsvDialect, interval: SampleInterval | null): TimeUnit {
   const { time } = dialect.columns;
   if (time.kind === 'column') {
-    const places = time.places ?? dialect.statedPlaces;
+    const places = time.places ?? dialect.statedPlaces ?? placesByInterval(time.usualStep, interval);
     if (places === null && time.isInteger && interval !== null)
       return { ...interval, places: PLACES_OF_COUNTS };
     return { numerator: 1n, denominator: 10n ** BigInt(places ?? 0), places: places ?? 0 };
@@ -88,4 +91,11 @@ function findUnit(dialect: CsvDialect, interval: SampleInterval | null): TimeUni
     throw new CaptureError('no-sample-rate', message, { line: dialect.dataLine });
   }
   return { ...interval, places: PLACES_OF_COUNTS };
+}
+
+/** A column without a unit whose steps are the stated interval when taken for s, ms, µs, ns or ps. Null: none of them fits. */
+function placesByInterval(usualStep: number, interval: SampleInterval | null): number | null {
+  if (interval === null) return null;
+  const ratio = (usualStep * Number(interval.denominator)) / Number(interval.numerator);
+  return [0, 3, 6, 9, 12].find((places) => Math.abs(ratio / 10 ** places - 1) < UNIT_TOLERANCE) ?? null;
 }

@@ -56,7 +56,13 @@ describe('a decimal number', () => {
   it('may have a decimal comma', () => {
     expect(parse('1,25', true)).toBe('125e-2');
     expect(parse('1,25E-05', true)).toBe('125e-7');
-    expect(parse('1.000,5', true)).toBeNull();
+  });
+
+  it('may have its thousands apart where that is plain', () => {
+    expect(parse('1.234.567,5', true)).toBe('12345675e-1');
+    expect(parse('1,234.5')).toBe('12345e-1');
+    expect(parse('1.23,5', true)).toBeNull();
+    expect(parse('1,234')).toBeNull();
   });
 
   it('is what the language reads, for up to 15 digits', () => {

@@ -66,6 +66,9 @@ export class DecimalNumber {
   private parseSlowly(bytes: Uint8Array, start: number, end: number, comma: boolean): boolean {
     if (end - start > LONGEST_NUMBER) return false;
     let text = decodeText(bytes.subarray(start, end));
+    // Where both signs occur the last one is the decimal sign, and the others stand between thousands.
+    if (comma && /^[+-]?\d{1,3}(\.\d{3})+,\d*$/.test(text)) text = text.replaceAll('.', '');
+    else if (/^[+-]?\d{1,3}(,\d{3})+\.\d*$/.test(text)) text = text.replaceAll(',', '');
     if (comma) text = text.replace(',', '.');
     const parts = /^([+-]?)(\d*)(?:\.(\d*))?(?:[eE]([+-]?\d{1,3}))?$/.exec(text);
     if (parts === null) return false;

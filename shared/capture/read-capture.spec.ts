@@ -67,6 +67,7 @@ describe('what a file is', () => {
     const bytes = utf16('\ufefftime,a\n0,1\nbad,1\n1,0\n2,1\n', true);
     expect(readBytes(bytes).defects).toMatchObject([{ code: 'bad-time', line: 3, column: 1, byte: null }]);
     expect(readBytes(bytes).byteLength).toBe(bytes.length);
+    expect(refusalOf(utf16('\ufeffDear team,\nno capture today\n', true))).toMatchObject({ where: 'line 1' });
   });
 });
 

@@ -37,8 +37,30 @@ export class CaptureReader {
     this.keep = new KeepRule(options.keep ?? []);
   }
 
-  /** Takes the next bytes. The chunk is not kept. */
+  /** Takes the next bytes. The chunk is not kept: its buffer may be used again. */
   push(chunk: Uint8Array): void {
+    this.withRightPlace(() => this.take(chunk));
+  }
+
+  /** The whole file was pushed. Call once. */
+  finish(): Capture {
+    return this.withRightPlace(() => this.end());
+  }
+
+  /** Offsets in a converted text mean nothing to the reader of a message. */
+  private withRightPlace<T>(work: () => T): T {
+    try {
+      return work();
+    } catch (error) {
+      if (this.transcoder === null || !(error instanceof CaptureError)) throw error;
+      throw new CaptureError(error.code, error.message, {
+        line: error.place.line,
+        column: error.place.column,
+      });
+    }
+  }
+
+  private take(chunk: Uint8Array): void {
     this.byteLength += chunk.length;
     if (this.reader !== null) {
       this.hand(this.reader, chunk);
@@ -51,12 +73,10 @@ export class CaptureReader {
     if (joined.length >= SNIFFED_BYTES) this.start();
   }
 
-  /** The whole file was pushed. Call once. */
-  finish(): Capture {
+  private end(): Capture {
     if (this.byteLength === 0) throw new CaptureError('empty-file', 'the file is empty', { byte: 0 });
     const capture = (this.reader ?? this.start()).finish();
     if (this.transcoder === null) return capture;
-    // Offsets in the converted text mean nothing to the reader of a message.
     const defects = capture.defects.map((defect) => ({ ...defect, byte: null }));
     return { ...capture, byteLength: this.byteLength, defects };
   }

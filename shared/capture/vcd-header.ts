@@ -1,6 +1,6 @@
-import { CaptureError } from './capture-error';
 import type { DefectList, Place } from './defect-list';
 import { quoteForMessage, decodeText } from './text-bytes';
+import { errorAt } from './text-place';
 import type { VcdVariables } from './vcd-variables';
 
 /** Real designs nest some ten scopes. */
@@ -14,10 +14,6 @@ const UNIT_EXPONENTS: Readonly<Record<string, number>> = { s: 0, ms: 3, us: 6, n
 export interface Timescale {
   readonly numerator: bigint;
   readonly denominator: bigint;
-}
-
-function errorPlace({ line, column, byte }: Place): { line?: number; column?: number; byte?: number } {
-  return { line: line ?? undefined, column: column ?? undefined, byte: byte ?? undefined };
 }
 
 /**
@@ -49,7 +45,7 @@ export class VcdHeader {
     if (exponent === undefined || Number(number) === 0) {
       const shown = words.length === 0 ? 'nothing' : words.slice(0, 3).map(quoteForMessage).join(' ');
       const message = `unknown timescale ${shown}: expected a number and one of s, ms, us, ns, ps, fs`;
-      throw new CaptureError('unknown-timescale', message, errorPlace(place));
+      throw errorAt('unknown-timescale', message, place);
     }
     this.timescale = { numerator: BigInt(number), denominator: 10n ** BigInt(exponent) };
   }
@@ -57,7 +53,7 @@ export class VcdHeader {
   private takeScope(words: readonly Uint8Array[], place: Place): void {
     if (this.scopes.length >= DEEPEST_SCOPE) {
       const message = `scopes are nested more than ${DEEPEST_SCOPE} deep`;
-      throw new CaptureError('scopes-too-deep', message, errorPlace(place));
+      throw errorAt('scopes-too-deep', message, place);
     }
     const name = words[words.length > 1 ? 1 : 0];
     this.scopes.push(name === undefined ? '' : plainName(name));

@@ -164,6 +164,12 @@ describe('values of a dump', () => {
     expect(edgesOf(capture, 't.b')).toBe('1 x@10 1@30');
   });
 
+  it('forgives a block that is not ended', () => {
+    const capture = readText(dump(TWO, '#0 $dumpvars 0! 1" #10 1! $dumpoff x! x" #30 $dumpon 1! #40 0!'));
+    expect(edgesOf(capture, 't.a')).toBe('0 x@10 1@30 0@40');
+    expect(capture.defects).toEqual([]);
+  });
+
   it('lets a gap that is never closed last to the end', () => {
     const capture = readText(dump(TWO, '#0 0! #10 $dumpoff x! x" $end #30'));
     expect(capture.gaps).toEqual([{ startTicks: 10, endTicks: 30 }]);
@@ -242,6 +248,7 @@ describe('a damaged dump', () => {
     ['a stamp that is no number', '#10 0! #20 1! #2x 0! #30 1!', 'bad-time 7:15', '0 1@10 x@11 1@20'],
     ['an unknown code', '#10 0! #20 1! 0& #30 0!', 'unknown-code 7:16', '0 1@10 0@20'],
     ['a word that is nothing', '#10 0! #20 1! hello\nq #30 0!', 'unknown-code 7:16', '0 1@10 0@20'],
+    ['an unknown command', '#10 0! #20 1! $lost\n#30 0!', 'unknown-word 7:15', '0 1@10 0@20'],
     ['a value without a code', '#10 0! #20 1! 0 #30 0!', 'bad-value 7:15', '0 1@10 0@20'],
     ['control characters', '#10 0! #20 1! \0\0\0 #30 0!', 'control-character 7:15', '0 1@10 0@20'],
     ['a cut inside a value', '#10 0! #20 1!\n#30 0! #35 1', 'cut-short 8:12', '0 1@10 0@20'],

@@ -7,29 +7,33 @@ import { BUSY_SPACING_S } from './digital-recorder';
 import type { FormatReader, KeepRule } from './format-reader';
 import { PlainChanges } from './plain-changes';
 import { decodeText, quoteForMessage } from './text-bytes';
+import { errorAt, TextPlace } from './text-place';
 import { VcdHeader } from './vcd-header';
 import { LEVELS, VcdSignals } from './vcd-signals';
 import { VcdVariables } from './vcd-variables';
+import {
+  isBlockOfValues,
+  isBodyCommand,
+  isDeclaration,
+  isEnd,
+  isKeyword,
+  parseReal,
+  parseStamp,
+} from './vcd-words';
 import { WordCarry } from './word-carry';
 
-const LINE_FEED = 10;
+const TAB = 9;
 const CARRIAGE_RETURN = 13;
 const SPACE = 32;
 const HASH = 35;
-const DOLLAR = 36;
 
 /** Of the words of one declaration; more are not needed. */
 const MOST_WORDS = 16;
-const LONGEST_STAMP = 40;
-/** Stamps of at most this many digits are exact as numbers. */
-const EXACT_DIGITS = 15;
 
 const NO_CODE = 0;
 const VECTOR_CODE = 1;
 const REAL_CODE = 2;
 const STRING_CODE = 3;
-
-const DECLARATIONS = new Set(['$timescale', '$scope', '$upscope', '$var', '$enddefinitions']);
 
 /**
  * Reads a value change dump, chunk by chunk.
@@ -44,10 +48,7 @@ export class VcdReader implements FormatReader {
   private readonly plain: PlainChanges;
 
   private readonly carry = new WordCarry();
-  private bytesBefore = 0;
-  private line = 1;
-  private lineStart = 0;
-  private isAfterReturn = false;
+  private readonly place = new TextPlace();
   private isAfterControl = false;
   private isStopped = false;
 
@@ -87,7 +88,7 @@ export class VcdReader implements FormatReader {
       if (used < rest.length) this.carry.append(rest.subarray(used));
       if (this.carry.isTooLong) this.refuseEndlessWord();
     } else {
-      this.bytesBefore += rest.length;
+      this.place.bytesBefore += rest.length;
     }
   }
 
@@ -100,7 +101,7 @@ export class VcdReader implements FormatReader {
     const { channels, endTicks, gaps } = this.signals.finish();
     return {
       format: 'vcd',
-      byteLength: this.bytesBefore,
+      byteLength: this.place.bytesBefore,
       timeBase: clock.timeBase(numerator, denominator),
       endTicks,
       layout: 'transitions',
@@ -115,7 +116,7 @@ export class VcdReader implements FormatReader {
 
   private refuseEndlessWord(): void {
     this.report('word-too-long', 0, () => 'a word of millions of characters: nothing is read from here on');
-    this.bytesBefore += this.carry.takeBytes().length;
+    this.place.bytesBefore += this.carry.takeBytes().length;
     this.isStopped = true;
   }
 
@@ -133,7 +134,7 @@ export class VcdReader implements FormatReader {
     if (!this.isInBody && this.command !== null) {
       throw errorAt('cut-short', `the file ends inside ${this.command}, before any value`, this.commandPlace);
     }
-    const place = this.placeOf(0);
+    const place = this.place.at(0);
     if (this.header.declarationCount === 0)
       throw errorAt('no-channels', 'the dump declares no variables', place);
     if (this.variables.channelCount === 0) {
@@ -144,14 +145,9 @@ export class VcdReader implements FormatReader {
     }
   }
 
-  private placeOf(offset: number): Place {
-    const byte = this.bytesBefore + offset;
-    return { line: this.line, column: byte - this.lineStart + 1, byte };
-  }
-
   private report(code: string, offset: number, describe: () => string): void {
     if (this.defects.isFull) this.defects.addUntold();
-    else this.defects.add(code, describe(), this.placeOf(offset));
+    else this.defects.add(code, describe(), this.place.at(offset));
   }
 
   /** Reads whole words; returns how many bytes are done with. `isWhole`: the last word ends with the bytes; `isFinal`: so does the file. */
@@ -166,7 +162,7 @@ export class VcdReader implements FormatReader {
         i += 1;
         continue;
       }
-      this.isAfterReturn = false;
+      this.place.passWord();
       this.isAfterControl = false;
       if (c === HASH && this.isPlain()) {
         const stop = this.takePlain(bytes, view, i);
@@ -182,20 +178,17 @@ export class VcdReader implements FormatReader {
       i = j;
     }
     const done = this.isStopped ? end : i;
-    this.bytesBefore += done;
+    this.place.bytesBefore += done;
     return done;
   }
 
   private takeBlank(c: number, offset: number): void {
-    if (c === LINE_FEED || c === CARRIAGE_RETURN) {
-      if (c === CARRIAGE_RETURN || !this.isAfterReturn) this.line += 1;
-      this.lineStart = this.bytesBefore + offset + 1;
-    } else if (c !== SPACE && (c < 9 || c > CARRIAGE_RETURN) && !this.isAfterControl) {
+    if (c !== SPACE && (c < TAB || c > CARRIAGE_RETURN) && !this.isAfterControl) {
       // Lost blocks of a file are often filled with zeros.
       this.report('control-character', offset, () => `control characters (${c}) stand between the words`);
       this.isAfterControl = true;
     }
-    this.isAfterReturn = c === CARRIAGE_RETURN;
+    this.place.passBlank(c, offset);
   }
 
   /** Nothing is under way that a plain stamp or change would mean something else for. */
@@ -208,10 +201,7 @@ export class VcdReader implements FormatReader {
   private takePlain(bytes: Uint8Array, view: DataView, start: number): number {
     const { plain } = this;
     const stop = plain.take(bytes, view, start);
-    if (plain.lines > 0) {
-      this.line += plain.lines;
-      this.lineStart = this.bytesBefore + plain.lineStart;
-    }
+    this.place.passLines(plain.lines, plain.lineStart);
     if (plain.hasChanges) this.signals.hasChanges = true;
     return stop;
   }
@@ -225,7 +215,7 @@ export class VcdReader implements FormatReader {
       const first = bytes[start];
       if (this.awaited !== NO_CODE) this.takeCode(bytes, start, end);
       else if (first === HASH) this.takeStamp(bytes, start, end, isLast);
-      else if (first === DOLLAR && isKeyword(bytes, start, end)) this.startCommand(bytes, start, end);
+      else if (isKeyword(bytes, start, end)) this.startCommand(bytes, start, end, isLast);
       else this.takeValue(bytes, start, end, isLast);
     } catch (error) {
       // Times that cannot be kept exact beside those before: what stands before is kept.
@@ -235,18 +225,19 @@ export class VcdReader implements FormatReader {
     }
   }
 
-  private startCommand(bytes: Uint8Array, start: number, end: number): void {
+  private startCommand(bytes: Uint8Array, start: number, end: number, isLast: boolean): void {
     const keyword = decodeText(bytes.subarray(start, Math.min(end, start + 64)));
-    const place = this.placeOf(start);
+    const place = this.place.at(start);
     if (keyword === '$end') {
-      this.block = null;
-      this.signals.isOff = false;
-    } else if (/^\$dump(vars|all|on|off)$/.test(keyword)) {
+      this.endBlock();
+    } else if (isBlockOfValues(keyword)) {
       this.enterBody(place);
       this.block = keyword;
       this.commandPlace = place;
       if (keyword === '$dumpon') this.signals.switchOn();
       if (keyword === '$dumpoff') this.signals.switchOff();
+    } else if (this.isInBody && !isBodyCommand(keyword)) {
+      this.reportUnknown(bytes, start, end, isLast);
     } else {
       this.command = keyword;
       this.commandPlace = place;
@@ -254,10 +245,15 @@ export class VcdReader implements FormatReader {
     }
   }
 
+  private endBlock(): void {
+    this.block = null;
+    this.signals.isOff = false;
+  }
+
   private continueCommand(bytes: Uint8Array, start: number, end: number): void {
     const command = this.command ?? '';
     if (!isEnd(bytes, start, end)) {
-      const isWanted = DECLARATIONS.has(command) && !this.isInBody && this.words.length < MOST_WORDS;
+      const isWanted = isDeclaration(command) && !this.isInBody && this.words.length < MOST_WORDS;
       if (isWanted) this.words.push(bytes.slice(start, Math.min(end, start + 65_536)));
       return;
     }
@@ -280,22 +276,16 @@ export class VcdReader implements FormatReader {
   }
 
   private takeStamp(bytes: Uint8Array, start: number, end: number, isLast: boolean): void {
-    this.enterBody(this.placeOf(start));
-    let value = 0;
-    let isNumber = end - start > 1 && end - start <= LONGEST_STAMP;
-    for (let i = start + 1; i < end && isNumber; i++) {
-      const digit = bytes[i] - 48;
-      isNumber = digit >= 0 && digit <= 9;
-      value = value * 10 + digit;
-    }
-    if (!isNumber) {
+    this.enterBody(this.place.at(start));
+    // No stamp stands inside a block: its end was forgotten.
+    this.endBlock();
+    const stamp = parseStamp(bytes, start + 1, end);
+    if (stamp === null) {
       const code = isLast ? 'cut-short' : 'bad-time';
       this.report(code, start, () => `${quoteForMessage(bytes.subarray(start, end))} is no time stamp`);
       this.signals.loseTime();
       return;
     }
-    const isExact = end - start - 1 <= EXACT_DIGITS;
-    const stamp = isExact ? value : BigInt(decodeText(bytes.subarray(start + 1, end)));
     const result = this.signals.moveTo(stamp);
     if (result === 'taken') return;
     this.isStopped = result === 'still-backwards';
@@ -314,7 +304,7 @@ export class VcdReader implements FormatReader {
       this.reportUnknown(bytes, start, end, isLast);
       return;
     }
-    this.enterBody(this.placeOf(start));
+    this.enterBody(this.place.at(start));
     if (isScalar) {
       this.takeScalar(bytes, start, end, isLast);
     } else if (kind === 0x62) {
@@ -363,34 +353,4 @@ export class VcdReader implements FormatReader {
     }
     return index;
   }
-}
-
-function errorAt(code: string, message: string, { line, column, byte }: Place): CaptureError {
-  return new CaptureError(code, message, {
-    line: line ?? undefined,
-    column: column ?? undefined,
-    byte: byte ?? undefined,
-  });
-}
-
-function isEnd(bytes: Uint8Array, start: number, end: number): boolean {
-  return (
-    end - start === 4 &&
-    bytes[start] === DOLLAR &&
-    bytes[start + 1] === 0x65 &&
-    bytes[start + 2] === 0x6e &&
-    bytes[start + 3] === 0x64
-  );
-}
-
-/** `$` followed by a letter. A code may begin with `$` too, but a code never begins a word of the file. */
-function isKeyword(bytes: Uint8Array, start: number, end: number): boolean {
-  const letter = bytes[start + 1] | 0x20;
-  return end - start > 1 && letter >= 0x61 && letter <= 0x7a;
-}
-
-/** `NaN` and `inf` are what printf writes; neither is a voltage. */
-function parseReal(text: string): number {
-  const value = Number(text);
-  return text !== '' && Number.isFinite(value) ? value : NaN;
 }
