@@ -65,7 +65,7 @@ export class CsvCells {
     const { number } = this;
     const before = sink.value;
     if (number.parse(bytes, from, to, this.hasComma)) {
-      sink.value = toDouble(number) * sink.column.voltsPerUnit;
+      sink.value = number.toDouble() * sink.column.voltsPerUnit;
     } else {
       const text = decodeText(bytes.subarray(from, Math.min(to, from + LONGEST_CELL)));
       // What instruments write for a value out of range or not taken.
@@ -77,12 +77,6 @@ export class CsvCells {
     }
     return sink.value === before;
   }
-}
-
-const POWERS = Array.from({ length: 16 }, (_, i) => 10 ** i);
-
-function toDouble({ mantissa, scale }: DecimalNumber): number {
-  return scale >= 0 && scale < 16 ? mantissa / POWERS[scale] : mantissa * 10 ** -scale;
 }
 
 /** A name may hold line breaks, a message may not. */

@@ -20,6 +20,7 @@ const SLASH = 0x2f;
 /** The beginning that is looked at before the first row is taken. */
 const EXAMINED_BYTES = 262_144;
 const LONGEST_RECORD = 1_048_576;
+const MOST_FAILURES = 6;
 
 /**
  * Reads a table of samples or changes, chunk by chunk.
@@ -42,6 +43,9 @@ export class CsvReader implements FormatReader {
   private isStopped = false;
   /** A row whose time is not known was left out since the last good one. */
   private isDoubtful = false;
+  /** Where no row looks like the one before the attempt is made for fewer and fewer of them. */
+  private predictionFailures = 0;
+  private predictionPause = 0;
   /** Digits after the point in the time of the last row; infinite where it was written in another way. */
   private timeScale = Infinity;
 
@@ -176,9 +180,16 @@ export class CsvReader implements FormatReader {
     const isPair = bytes[end] === CARRIAGE_RETURN && bytes[end + 1] === LINE_FEED;
     const next = end + (isPair ? 2 : 1);
     if (!table.spacing.isSettled || next + (next - this.row.start) > bytes.length) return end;
-    if (this.cells?.hasBadCell !== false || !predicted.prepare(bytes, this.row, next, table, this.timeScale))
+    if (this.predictionPause > 0) {
+      this.predictionPause -= 1;
       return end;
-    const stop = predicted.take(bytes, view, next);
+    }
+    const isReady =
+      this.cells?.hasBadCell === false && predicted.prepare(bytes, this.row, next, table, this.timeScale);
+    const stop = isReady ? predicted.take(bytes, view, next) : next;
+    this.predictionFailures = stop > next ? 0 : Math.min(this.predictionFailures + 1, MOST_FAILURES);
+    if (this.predictionFailures > 2) this.predictionPause = 1 << this.predictionFailures;
+    if (!isReady) return end;
     this.line += predicted.rows + 1;
     table.accept(predicted.ticks);
     this.isAfterReturn = bytes[stop - 1] === CARRIAGE_RETURN;
@@ -235,7 +246,7 @@ export class CsvReader implements FormatReader {
     }
     if (time.index >= row.cellCount) return NaN;
     if (!number.parse(bytes, row.starts[time.index], row.ends[time.index], table.hasComma)) return NaN;
-    this.timeScale = number.exponent === null && number.wide === null ? number.scale : Infinity;
+    this.timeScale = number.exponent === null && number.wide === null ? number.scale : NaN;
     return clock.toTicks(number);
   }
 

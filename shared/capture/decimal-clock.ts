@@ -7,6 +7,9 @@ const COARSEST_PLACES = 9;
 /** Exponents beyond it are nonsense as times. */
 const LARGEST_SHIFT = 30;
 
+/** Powers of ten that are exact doubles; looking one up is faster than computing it. */
+const POWERS = Array.from({ length: 16 }, (_, i) => 10 ** i);
+
 /** `digits · factor / divisor − origin` are ticks; where that is no whole number the tick is too coarse for the time. */
 export interface LinearScale {
   readonly factor: number;
@@ -64,7 +67,9 @@ export class DecimalClock {
    */
   linear(digits: number, scale: number): LinearScale | null {
     const shift = this.places - scale;
-    if (digits + Math.abs(shift) > 15 || Math.abs(this.originNumber) > LARGEST) return null;
+    if (!Number.isFinite(scale)) return null;
+    // Dividing makes the number smaller, multiplying larger: only that can pass 2⁵³.
+    if (digits + Math.max(0, shift) > 15 || shift < -15 || Math.abs(this.originNumber) > LARGEST) return null;
     return {
       factor: 10 ** Math.max(0, shift),
       divisor: 10 ** Math.max(0, -shift),
@@ -113,8 +118,9 @@ export class DecimalClock {
 
   private relative(time: DecimalNumber): number {
     const shift = this.places - time.scale;
-    if (time.wide === null && shift >= 0 && shift <= 15) {
-      const value = time.mantissa * 10 ** shift;
+    if (time.wide === null && shift > -POWERS.length && shift < POWERS.length) {
+      const { mantissa } = time;
+      const value = shift >= 0 ? mantissa * POWERS[shift] : roundAwayFromZero(mantissa / POWERS[-shift]);
       const ticks = value - this.originNumber;
       if (Math.abs(value) <= LARGEST && Math.abs(this.originNumber) <= LARGEST && ticks <= LARGEST)
         return ticks;
@@ -154,4 +160,8 @@ export class DecimalClock {
 function roundedQuotient(value: bigint, divisor: bigint): bigint {
   const half = divisor / 2n;
   return value >= 0n ? (value + half) / divisor : -((-value + half) / divisor);
+}
+
+function roundAwayFromZero(value: number): number {
+  return value < 0 ? -Math.round(-value) : Math.round(value);
 }

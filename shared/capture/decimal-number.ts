@@ -4,12 +4,19 @@ const MINUS = 0x2d;
 const PLUS = 0x2b;
 const POINT = 0x2e;
 const COMMA = 0x2c;
+const SMALL_E = 0x65;
 
-/** Digits that always fit a double exactly. */
+/** Significant digits that always fit a double exactly; a printed double has up to 17. */
 const SAFE_DIGITS = 15;
+const DOUBLE_DIGITS = 17;
 const LONGEST_NUMBER = 60;
 /** Digits after the point of a number that only a printed binary fraction has: finer than a femtosecond tells nothing. */
 const FINEST_FRACTION = 15;
+/** So many zeros at the end of 15 rounded digits are no chance: what came after them was noise. */
+const NOISE_ZEROS = 1000;
+
+/** Looking a power up is faster than computing it. */
+const POWERS = Array.from({ length: 16 }, (_, i) => 10 ** i);
 
 /**
  * A decimal number taken apart without rounding: value = mantissa · 10^(−scale). One object is used for all numbers of a file, so
@@ -32,26 +39,58 @@ export class DecimalNumber {
     this.exponent = null;
   }
 
-  /** Parses `bytes[start, end)`. False: that is no finite number. `comma`: a comma is taken for the decimal sign too. */
+  /**
+   * Parses `bytes[start, end)`. False: that is no finite number. `comma`: a comma is taken for the decimal sign too. One loop, since
+   * tables of voltages are made of little else.
+   */
   parse(bytes: Uint8Array, start: number, end: number, comma: boolean): boolean {
+    if (end - start > LONGEST_NUMBER) return false;
     let i = start;
     const isNegative = bytes[i] === MINUS;
     if (isNegative || bytes[i] === PLUS) i += 1;
-    if (end - i > SAFE_DIGITS + 1 || end === i) return this.parseSlowly(bytes, start, end, comma);
-    let value = 0;
+    let high = 0;
+    let highDigits = 0;
+    let low = 0;
+    let lowDigits = 0;
+    let digits = 0;
     let point = -1;
     for (; i < end; i++) {
-      const digit = bytes[i] - 48;
-      if (digit >= 0 && digit <= 9) value = value * 10 + digit;
-      else if (point < 0 && (bytes[i] === POINT || (comma && bytes[i] === COMMA))) point = i;
-      else return this.parseSlowly(bytes, start, end, comma);
+      const byte = bytes[i];
+      const digit = byte - 48;
+      if (digit >= 0 && digit <= 9) {
+        digits += 1;
+        if (highDigits < SAFE_DIGITS) {
+          high = high * 10 + digit;
+          if (high !== 0) highDigits += 1;
+        } else {
+          low = low * 10 + digit;
+          lowDigits += 1;
+        }
+      } else if (point < 0 && (byte === POINT || (comma && byte === COMMA))) {
+        point = i;
+      } else {
+        break;
+      }
     }
-    if (point >= 0 && end - start === (isNegative ? 2 : 1)) return false;
-    this.mantissa = isNegative ? -value : value;
-    this.wide = null;
-    this.scale = point < 0 ? 0 : end - point - 1;
+    if (digits === 0) return false;
     this.exponent = null;
+    this.scale = point < 0 ? 0 : i - point - 1;
+    if (i < end && !this.parseExponent(bytes, i, end)) return this.parseGroups(bytes, start, end, comma);
+    this.wide = null;
+    this.mantissa = isNegative ? -high : high;
+    if (lowDigits > SAFE_DIGITS) this.takeAllDigits(bytes, start, end);
+    else if (lowDigits > 0) this.addDigits(isNegative, high, low, lowDigits);
+    if (this.scale - highDigits >= FINEST_FRACTION || this.mantissa === 0) {
+      this.mantissa = 0;
+      this.scale = Math.max(0, Math.min(this.scale, FINEST_FRACTION));
+    }
     return true;
+  }
+
+  /** The nearest double, give or take its last place. */
+  toDouble(): number {
+    const { mantissa, scale } = this;
+    return scale >= 0 && scale < POWERS.length ? mantissa / POWERS[scale] : mantissa * 10 ** -scale;
   }
 
   /** Takes zeros at the end of the fraction away. */
@@ -63,53 +102,65 @@ export class DecimalNumber {
     }
   }
 
-  private parseSlowly(bytes: Uint8Array, start: number, end: number, comma: boolean): boolean {
-    if (end - start > LONGEST_NUMBER) return false;
-    let text = decodeText(bytes.subarray(start, end));
-    // Where both signs occur the last one is the decimal sign, and the others stand between thousands.
-    if (comma && /^[+-]?\d{1,3}(\.\d{3})+,\d*$/.test(text)) text = text.replaceAll('.', '');
-    else if (/^[+-]?\d{1,3}(,\d{3})+\.\d*$/.test(text)) text = text.replaceAll(',', '');
-    if (comma) text = text.replace(',', '.');
-    const parts = /^([+-]?)(\d*)(?:\.(\d*))?(?:[eE]([+-]?\d{1,3}))?$/.exec(text);
-    if (parts === null) return false;
-    const [, sign, whole, fraction = '', exponent] = parts;
-    if (whole + fraction === '') return false;
-    this.exponent = exponent === undefined ? null : Number(exponent);
-    this.setDigits(sign === '-', whole + fraction, fraction.length - (this.exponent ?? 0));
+  private parseExponent(bytes: Uint8Array, at: number, end: number): boolean {
+    if ((bytes[at] | 0x20) !== SMALL_E) return false;
+    let i = at + 1;
+    const isNegative = bytes[i] === MINUS;
+    if (isNegative || bytes[i] === PLUS) i += 1;
+    if (i === end || end - i > 3) return false;
+    let exponent = 0;
+    for (; i < end; i++) {
+      const digit = bytes[i] - 48;
+      if (digit < 0 || digit > 9) return false;
+      exponent = exponent * 10 + digit;
+    }
+    this.exponent = isNegative ? -exponent : exponent;
+    this.scale -= this.exponent;
     return true;
   }
 
-  private setDigits(isNegative: boolean, digits: string, scale: number): void {
-    let significant = digits.replace(/^0+/, '');
-    let left = scale;
-    if (scale > 0 && significant.length > SAFE_DIGITS) {
-      [significant, left] = withoutNoise(significant, scale);
+  /**
+   * More than 15 digits. A double printed in full, 0.18000000000000002, means 0.18: where rounding to 15 digits leaves zeros at the
+   * end the rest was noise. Without such a run of zeros all digits may be meant (seconds since 1970 with microseconds).
+   */
+  private addDigits(isNegative: boolean, high: number, low: number, lowDigits: number): void {
+    const sign = isNegative ? -1 : 1;
+    if (SAFE_DIGITS + lowDigits <= DOUBLE_DIGITS && lowDigits <= this.scale) {
+      let rounded = high + (2 * low >= 10 ** lowDigits ? 1 : 0);
+      let places = this.scale - lowDigits;
+      const isNoise = rounded % NOISE_ZEROS === 0 && places >= 3;
+      if (isNoise || places >= FINEST_FRACTION) {
+        for (; places > 0 && rounded % 10 === 0; places -= 1) rounded /= 10;
+        this.mantissa = sign * rounded;
+        this.scale = places;
+        return;
+      }
     }
-    if (left > FINEST_FRACTION && left > significant.length - 1 + FINEST_FRACTION) {
-      significant = '0';
-      left = 0;
-    }
-    this.mantissa = Number(significant) * (isNegative ? -1 : 1);
-    this.wide = significant.length > SAFE_DIGITS ? BigInt(significant) * (isNegative ? -1n : 1n) : null;
-    this.scale = left;
-    if (this.mantissa === 0) this.scale = 0;
+    const exact = BigInt(high) * 10n ** BigInt(lowDigits) + BigInt(low);
+    this.wide = isNegative ? -exact : exact;
+    this.mantissa = Number(this.wide);
   }
-}
 
-/**
- * A double printed in full, 0.18000000000000002, means 0.18: where rounding to 15 digits leaves zeros at the end they were noise.
- * Without such a run of zeros all 16 or 17 digits may be meant (seconds since 1970 with microseconds).
- */
-function withoutNoise(digits: string, scale: number): [string, number] {
-  const surplus = digits.length - SAFE_DIGITS;
-  if (digits.length > 17 || surplus > scale) return [digits, scale];
-  const half = 5n * 10n ** BigInt(surplus - 1);
-  const rounded = String((BigInt(digits) + half) / 10n ** BigInt(surplus));
-  const short = rounded.replace(/0+$/, '');
-  const zeros = rounded.length - short.length;
-  if (zeros >= 3) {
-    const kept = Math.min(zeros, scale - surplus);
-    return [rounded.slice(0, rounded.length - kept), scale - surplus - kept];
+  /** More than 30 digits, which no instrument writes. */
+  private takeAllDigits(bytes: Uint8Array, start: number, end: number): void {
+    const [mantissa] = decodeText(bytes.subarray(start, end)).toLowerCase().split('e');
+    const exact = BigInt(mantissa.replace(/[^0-9]/g, ''));
+    this.wide = mantissa.startsWith('-') ? -exact : exact;
+    this.mantissa = Number(this.wide);
   }
-  return scale > FINEST_FRACTION ? [rounded, scale - surplus] : [digits, scale];
+
+  /** Thousands apart, `1.234,5` or `1,234.5`: where both signs occur the last one is the decimal sign. */
+  private parseGroups(bytes: Uint8Array, start: number, end: number, comma: boolean): boolean {
+    const text = decodeText(bytes.subarray(start, end));
+    const isGerman = comma && /^[+-]?\d{1,3}(\.\d{3})+,\d*$/.test(text);
+    const isEnglish = /^[+-]?\d{1,3}(,\d{3})+\.\d*$/.test(text);
+    if (!isGerman && !isEnglish) return false;
+    const plain = isGerman ? text.replaceAll('.', '') : text.replaceAll(',', '');
+    return this.parse(
+      Uint8Array.from(plain, (c) => c.charCodeAt(0)),
+      0,
+      plain.length,
+      comma,
+    );
+  }
 }

@@ -28,6 +28,7 @@ export class DigitalRecorder {
   private committedLevel: number = UNKNOWN;
   private pendingTime = 0;
   private edgeCount = 0;
+  private shortSpacings = 0;
 
   constructor(
     readonly name: string,
@@ -99,18 +100,15 @@ export class DigitalRecorder {
     if (this.times.push(this.pendingTime)) this.judgeBusiness();
   }
 
+  /** A chunk of changes is full. Only its own spacings are looked at: looking at all of them again would cost more than reading. */
   private judgeBusiness(): void {
-    if (this.isKept || this.times.length < MANY_CHANGES) return;
+    const { lastChunk } = this.times;
     const limit = this.clock.busySpacing;
-    let previous = 0;
     let short = 0;
-    this.times.forEachChunk((chunk, count) => {
-      for (let i = 0; i < count; i++) {
-        if (chunk[i] - previous < limit) short += 1;
-        previous = chunk[i];
-      }
-    });
-    if (short * 2 <= this.times.length) return;
+    for (let i = 1; i < lastChunk.length; i++) if (lastChunk[i] - lastChunk[i - 1] < limit) short += 1;
+    this.shortSpacings += short;
+    if (this.isKept || this.times.length < MANY_CHANGES || this.shortSpacings * 2 <= this.times.length)
+      return;
     this.isTooBusy = true;
     this.times.clear();
     this.levels.clear();

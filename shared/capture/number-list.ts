@@ -33,6 +33,11 @@ export class NumberList<A extends NumberArray> {
     return this.used === this.current.length;
   }
 
+  /** The numbers of the chunk that is being filled. */
+  get lastChunk(): A {
+    return this.current;
+  }
+
   replaceLast(value: number): void {
     this.current[this.used - 1] = value;
   }

@@ -3,12 +3,17 @@ const MOST_ARGUMENTS = 8192;
 
 /** Windows-1252 where it differs from Latin-1 does not matter for names: only µ (B5) and letters with accents occur. */
 function decodeLatin1(bytes: Uint8Array): string {
-  if (bytes.length <= MOST_ARGUMENTS) return String.fromCharCode(...bytes);
+  // Spreading typed arrays would go through their iterator: ten times slower.
+  if (bytes.length <= MOST_ARGUMENTS) return textOf(bytes);
   let text = '';
   for (let i = 0; i < bytes.length; i += MOST_ARGUMENTS) {
-    text += String.fromCharCode(...bytes.subarray(i, i + MOST_ARGUMENTS));
+    text += textOf(bytes.subarray(i, i + MOST_ARGUMENTS));
   }
   return text;
+}
+
+function textOf(bytes: Uint8Array): string {
+  return Reflect.apply(String.fromCharCode, null, bytes) as string;
 }
 
 function isAscii(bytes: Uint8Array): boolean {

@@ -1,5 +1,6 @@
 import type { Capture } from './capture';
 import { CaptureError } from './capture-error';
+import { DecimalNumber } from './decimal-number';
 import type { Place } from './defect-list';
 import { DefectList } from './defect-list';
 import type { RecorderClock } from './digital-recorder';
@@ -11,15 +12,7 @@ import { errorAt, TextPlace } from './text-place';
 import { VcdHeader } from './vcd-header';
 import { LEVELS, VcdSignals } from './vcd-signals';
 import { VcdVariables } from './vcd-variables';
-import {
-  isBlockOfValues,
-  isBodyCommand,
-  isDeclaration,
-  isEnd,
-  isKeyword,
-  parseReal,
-  parseStamp,
-} from './vcd-words';
+import { isBlockOfValues, isBodyCommand, isDeclaration, isEnd, isKeyword, parseStamp } from './vcd-words';
 import { WordCarry } from './word-carry';
 
 const TAB = 9;
@@ -64,6 +57,7 @@ export class VcdReader implements FormatReader {
   private awaited = NO_CODE;
   private vector: Uint8Array = new Uint8Array(0);
   private real = 0;
+  private readonly number = new DecimalNumber();
 
   constructor(
     keep: KeepRule,
@@ -201,6 +195,7 @@ export class VcdReader implements FormatReader {
   private takePlain(bytes: Uint8Array, view: DataView, start: number): number {
     const { plain } = this;
     const stop = plain.take(bytes, view, start);
+    if (stop > start) this.endBlock();
     this.place.passLines(plain.lines, plain.lineStart);
     if (plain.hasChanges) this.signals.hasChanges = true;
     return stop;
@@ -311,7 +306,8 @@ export class VcdReader implements FormatReader {
       this.vector = bytes.slice(start + 1, end);
       this.awaited = VECTOR_CODE;
     } else if (kind === 0x72) {
-      this.real = parseReal(decodeText(bytes.subarray(start + 1, Math.min(end, start + 64))));
+      // `NaN` and `inf` are what printf writes; neither is a voltage.
+      this.real = this.number.parse(bytes, start + 1, end, false) ? this.number.toDouble() : NaN;
       this.awaited = REAL_CODE;
     } else {
       this.awaited = STRING_CODE;

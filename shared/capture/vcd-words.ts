@@ -30,12 +30,6 @@ export function isDeclaration(command: string): boolean {
   return DECLARATIONS.has(command);
 }
 
-/** `NaN` and `inf` are what printf writes; neither is a voltage. */
-export function parseReal(text: string): number {
-  const value = Number(text);
-  return text !== '' && Number.isFinite(value) ? value : NaN;
-}
-
 /** Digits of a stamp as a number, or as a big integer where they are many; null where they are no digits. */
 export function parseStamp(bytes: Uint8Array, start: number, end: number): number | bigint | null {
   if (end === start || end - start > LONGEST_STAMP) return null;
