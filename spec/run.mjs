@@ -58,8 +58,8 @@ step('types of server', bin('tsc'), ['-p', 'server']);
 step('types of spec', bin('tsc'), ['-p', 'spec']);
 step('lint', bin('eslint'), ['.']);
 step('format', bin('prettier'), ['--check', '--log-level', 'warn', '.']);
+step('build', process.execPath, ['server/setup/prepare.mjs']);
 const hasClient = existsSync(join(ROOT, 'angular.json'));
-if (hasClient) step('build', process.execPath, ['server/setup/prepare.mjs']);
 const nodeReport = join(RESULTS, 'node.json');
 suite(
   'library, server, specs',

@@ -87,7 +87,6 @@ function install() {
 }
 
 function build() {
-  if (!existsSync(join(ROOT, 'angular.json'))) return;
   const hash = hashOf([
     ...BUILD_FILES.filter((file) => existsSync(join(ROOT, file))),
     ...SOURCES.flatMap(filesBelow),

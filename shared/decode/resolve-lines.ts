@@ -115,7 +115,9 @@ class LineResolver {
       isKnown(resolveLine(this.capture, trial.channel, 'data', trial.polarity, this.unknownSpans).trace),
     );
     if (known !== undefined) return known;
-    return trials.find(({ best: reading }) => reading !== null && reading.line.characters.count > reading.damaged * 3);
+    return trials.find(
+      ({ best: reading }) => reading !== null && reading.line.characters.count > reading.damaged * 3,
+    );
   }
 
   private explainData(best: DataTrial, trials: readonly DataTrial[], isStated: boolean): void {

@@ -58,7 +58,7 @@ describe('margin and distortion of a composed line', () => {
       steps: [
         { do: 'wait', ms: 100 },
         { do: 'reset', widthMs: 110, latencyMs: 10 },
-        { do: 'draw', figure: 'spiral', size: 900, packets: 60 },
+        { do: 'draw', figure: 'circle', size: 900, packets: 60 },
         { do: 'wait', ms: 50 },
       ],
     });

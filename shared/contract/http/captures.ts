@@ -92,7 +92,7 @@ export const capturePageSchema = z.object({
   page: z.number().int(),
   pageSize: z.number().int(),
   captures: z.array(captureSchema),
-  /** Of the whole workspace, whatever was asked for. `violations` counts rules violated in latest checks. */
+  /** Of the whole workspace, whatever was asked for. Week: the last seven days. `violations`: rules violated in latest checks. */
   counts: z.object({
     registered: z.number().int(),
     thisWeek: z.number().int(),
@@ -100,5 +100,7 @@ export const capturePageSchema = z.object({
     capturesWithViolations: z.number().int(),
     unmapped: z.number().int(),
   }),
+  /** Everybody who has a capture: for the filter. */
+  owners: z.array(personRefSchema),
 });
 export type CapturePage = z.infer<typeof capturePageSchema>;

@@ -32,6 +32,8 @@ export const newDecodeSchema = z.strictObject({
 });
 /** As it is sent: what has a default may be left out. */
 export type NewDecode = z.input<typeof newDecodeSchema>;
+/** As it is kept. */
+export type DecodeRequest = z.output<typeof newDecodeSchema>;
 
 /** One map for many captures. */
 export const batchDecodeSchema = newDecodeSchema.extend({

@@ -309,7 +309,12 @@ export const ENDPOINTS = {
     summary: 'Server-sent events: progress of jobs and changes; one stream for every topic',
     media: 'text/event-stream',
   },
-  'GET /openapi.json': { topic: 'API', summary: 'This document', media: 'application/json' },
+  'GET /openapi.json': {
+    topic: 'API',
+    summary: 'This contract as an OpenAPI 3.1 document',
+    media: 'application/json',
+  },
+  'GET /docs': { topic: 'API', summary: 'This contract as a page', media: 'text/html' },
 } as const satisfies Record<string, Endpoint>;
 
 /** Method and path, such as `GET /captures/:number`. */
