@@ -89,7 +89,7 @@ function install() {
 function build() {
   const hash = hashOf([
     ...BUILD_FILES.filter((file) => existsSync(join(ROOT, file))),
-    ...SOURCES.flatMap(filesBelow),
+    ...SOURCES.filter((folder) => existsSync(join(ROOT, folder))).flatMap(filesBelow),
   ]);
   if (isCurrent(BUILD_STAMP, hash)) return;
   say('Building …');
