@@ -9,6 +9,7 @@ import type { FormatTrial } from '../detection/choose-framing';
 import { chooseProtocol } from '../detection/choose-protocol';
 import type { Detection } from '../detection/detection';
 import { STANDARD_BIT_RATES } from '../detection/estimate-bit-time';
+import { TRIAL_EDGES } from '../detection/find-data-line';
 import type { DataQuestion, DataTrial } from '../detection/find-data-line';
 import type { CharacterFormat } from '../detection/read-line';
 import type { LevelTrace } from '../line/level-trace';
@@ -107,7 +108,7 @@ export function decode(capture: Capture, map: LineMap = {}, options: DecodeOptio
 /** The whole data line in the format that suits it best; null without a bit time. */
 function readData(trace: LevelTrace, trial: DataTrial | null, question: DataQuestion): FormatTrial | null {
   if (trial === null || trial.bitTime === null) return null;
-  const isWhole = trial.best !== null && trace.ticks.length <= 40_000;
+  const isWhole = trial.best !== null && trace.ticks.length <= TRIAL_EDGES;
   if (isWhole) return trial.best;
   const format = trial.best?.line.format;
   const formats = format === undefined ? question.formats : [format];

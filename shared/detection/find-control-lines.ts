@@ -40,6 +40,8 @@ export interface ControlEvidence {
   readonly edges: number;
 }
 
+/** A device is silent while RTS is OFF and unpowered without DTR: an unnamed line must be ON for this share of its characters (house). */
+const LEAST_SHARE_ON = 0.9;
 /** More changes than this are no control line of a pointing device (house). */
 const MOST_EDGES = 20_000;
 
@@ -148,7 +150,9 @@ function scoreControl(
     if (shareOn > 0.5) why.push('it is ON while characters are sent');
   }
   // A line nobody names must at least do something.
-  if (!isNamed && (edges === 0 || raises === 0 || shareOn < 0.6)) score = -1;
+  const answersM = raises > 0 && answeredByM >= raises / 2;
+  const isSeenWorking = shareOn >= LEAST_SHARE_ON || answersM;
+  if (!isNamed && (edges === 0 || raises === 0 || !isSeenWorking)) score = -1;
   if (question.dataChannel !== null && scopeOf(channel.name) === scopeOf(question.dataChannel)) score += 0.1;
   if (!isNamed && edges > Math.max(200, question.characters.count)) score = -1;
   return { score, reason: why.length === 0 ? 'it changes seldom' : why.join('; ') };

@@ -13,7 +13,7 @@ import type { BitTimeEstimate } from './estimate-bit-time';
 import type { CharacterFormat } from './read-line';
 
 /** Edges looked at when channels and polarities are compared; the whole line is read afterwards. */
-const TRIAL_EDGES = 40_000;
+export const TRIAL_EDGES = 8000;
 
 /** What was stated about the data; everything left out is found. */
 export interface DataQuestion {
