@@ -48,6 +48,11 @@ export default tseslint.config(
     files: ['src/**/*.ts'],
     extends: [...angular.configs.tsRecommended],
     processor: angular.processInlineTemplates,
+    languageOptions: {
+      parserOptions: {
+        project: ['src/tsconfig.spec.json', 'src/tsconfig.worker.json', 'src/tsconfig.app.json'],
+      },
+    },
     rules: {
       '@angular-eslint/directive-selector': [
         'error',

@@ -1,0 +1,6 @@
+import './trusted-types';
+import { bootstrapApplication } from '@angular/platform-browser';
+import { App } from './app/app';
+import { appConfig } from './app/app.config';
+
+void bootstrapApplication(App, appConfig);
