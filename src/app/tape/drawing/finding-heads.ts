@@ -41,7 +41,10 @@ const TOUCH_PX = 18;
 const APART_PX = 6;
 
 interface Pin {
-  readonly x: number;
+  /** Of the lead: the head stands on its stem. */
+  x: number;
+  /** Of the first member: the others are within reach of it. */
+  readonly firstX: number;
   readonly members: number[];
   lead: number;
   isSelected: boolean;
@@ -73,19 +76,21 @@ function joinPins(model: TapeModel, view: TapeView, joinPx: number): Pin[] {
     if (view.isPhone && model.findings[index].verdict === 'pass' && !isChosen(view, index)) continue;
     const x = scale.xOf(model.findingTicks[i]);
     const last = pins.at(-1);
-    if (last === undefined || x - last.x >= joinPx) {
-      pins.push({ x, members: [index], lead: index, isSelected: isChosen(view, index) });
+    if (last === undefined || x - last.firstX >= joinPx) {
+      pins.push({ x, firstX: x, members: [index], lead: index, isSelected: isChosen(view, index) });
       continue;
     }
     last.members.push(index);
     if (isChosen(view, index)) {
       last.lead = index;
+      last.x = x;
       last.isSelected = true;
     } else if (
       !last.isSelected &&
       isWorse(model.findings[index].verdict, model.findings[last.lead].verdict)
     ) {
       last.lead = index;
+      last.x = x;
     }
   }
   return pins;

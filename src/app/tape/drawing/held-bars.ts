@@ -18,8 +18,8 @@ export interface HeldBar {
 
 /** Height of the line of a button: L, M, R (and the fourth) one below the other. */
 export function heldLineY(lane: LaneLayout, button: number, buttons: number): number {
-  const pitch = buttons > 3 ? 0.23 : 0.3;
-  const first = buttons > 3 ? 0.17 : 0.2;
+  const pitch = buttons > 3 ? 0.235 : 0.3;
+  const first = buttons > 3 ? 0.145 : 0.2;
   return lane.topPx + lane.heightPx * (first + pitch * button);
 }
 

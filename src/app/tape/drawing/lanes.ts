@@ -1,6 +1,6 @@
 import { paperWidth } from './view';
 import type { TapeView } from './view';
-import { hasFlags, ringCounts, stickPin } from './packet-vectors';
+import { hasFlags, ringCounts, stickPin, stickScale } from './packet-vectors';
 import { FROM, scaleAt } from './scales';
 import type { ScaleName } from './scales';
 import type { TapeModel } from './tape-model';
@@ -207,7 +207,8 @@ function subNameOf(id: LaneId, model: TapeModel, view: TapeView, perBit: number,
       return 'in motion';
     case 'packets': {
       if (model.tape.packets.count === 0) return '';
-      if (!hasFlags(model, perBit)) return `${stickPin(model, heightPx).counts} counts`;
+      if (!hasFlags(model, perBit))
+        return `${stickPin(stickScale(model, view, perBit, heightPx)).counts} counts`;
       const ring = `ring ${ringCounts(model, view)}`;
       return view.gutterPx < 90 ? ring : `${ring} counts`;
     }

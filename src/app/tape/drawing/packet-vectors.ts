@@ -1,5 +1,6 @@
 import { indexesTouching } from './column-search';
 import { roundStep } from './ruler-steps';
+import { scaleAt } from './scales';
 import type { TapeModel } from './tape-model';
 import type { TapeView } from './view';
 
@@ -35,17 +36,22 @@ export function hasFlags(model: TapeModel, pxPerBit: number): boolean {
   return pxPerBit >= 1.2 && 3 * model.elements * pxPerBit >= FLAG_FROM_PX;
 }
 
-/** px a count of the arrows without a ring. The same everywhere on the tape. */
-export function stickScale(model: TapeModel, laneHeightPx: number): number {
-  return (STICK_SHARE * laneHeightPx) / model.motion.largestUsual;
+/**
+ * px a count of movements drawn without a ring: in the survey the same everywhere on the tape, closer up so that the longest in
+ * view fills the lane.
+ */
+export function stickScale(
+  model: TapeModel,
+  view: Pick<TapeView, 'window'>,
+  pxPerBit: number,
+  laneHeightPx: number,
+): number {
+  const counts = scaleAt(pxPerBit) === 'survey' ? model.motion.largestUsual : ringCounts(model, view);
+  return (STICK_SHARE * laneHeightPx) / counts;
 }
 
 /** The pin in the gutter: a round number of counts and its length, px. */
-export function stickPin(
-  model: TapeModel,
-  laneHeightPx: number,
-): { readonly counts: number; readonly lengthPx: number } {
-  const scale = stickScale(model, laneHeightPx);
+export function stickPin(scale: number): { readonly counts: number; readonly lengthPx: number } {
   const counts = Math.max(1, roundStep(PIN_PX / scale));
   return { counts, lengthPx: counts * scale };
 }

@@ -97,17 +97,27 @@ function paintOutline(sheet: Sheet, rows: DataRows, c: number): void {
   if (cell.width >= 3) {
     // Faint lines that tie the cell to its stretch of the ribbon.
     pen.down(cell.x + 0.5, rows.ribbonBottom, rows.cellTop, palette.ink2, 0.8);
-    pen.down(
-      cell.x + cell.width - 0.5,
-      (rows.ribbonTop + rows.ribbonBottom) / 2,
-      rows.cellTop,
-      palette.ink2,
-      0.8,
-    );
+    if (!isFollowed(sheet, c))
+      pen.down(
+        cell.x + cell.width - 0.5,
+        (rows.ribbonTop + rows.ribbonBottom) / 2,
+        rows.cellTop,
+        palette.ink2,
+        0.8,
+      );
   }
   const isSelected = view.selection?.kind === 'character' && view.selection.index === c;
   if (isSelected) pen.frame(rect, palette.primary, 2);
   else pen.frame(rect, palette.ink, 1);
+}
+
+/** Whether the next character begins within 2 px: its line then stands for the end of this one too. */
+function isFollowed(sheet: Sheet, c: number): boolean {
+  const { model, scale } = sheet;
+  const { characters } = model.tape;
+  if (c + 1 >= characters.count) return false;
+  const { x, width } = cellOf(model, scale, c);
+  return scale.xOf(characters.startTicks[c + 1]) - (x + width) < 2;
 }
 
 /** Digits in the sub-cells; the value inside the cell while they are too narrow for digits, else below. */

@@ -2,7 +2,7 @@ import type { LaneLayout } from './lanes';
 import { edgeScale, referenceName } from './edge-stems';
 import { formatSigned } from './figures';
 import { heldLineY } from './held-bars';
-import { hasFlags, stickPin } from './packet-vectors';
+import { hasFlags, stickPin, stickScale } from './packet-vectors';
 import type { Sheet } from './sheet';
 import { middleOf } from './sheet';
 import type { InkedText } from './pen';
@@ -29,14 +29,14 @@ export function paintGutterEdge(sheet: Sheet): void {
 /** Left inset of the names, px. */
 function insetOf(gutterPx: number): number {
   if (gutterPx >= 96) return 20;
-  return gutterPx >= 80 ? 14 : 9;
+  return gutterPx >= 80 ? 14 : 8;
 }
 
 function paintName(sheet: Sheet, lane: LaneLayout): void {
   const { pen, palette, view } = sheet;
   const x = insetOf(view.gutterPx);
   const middle = middleOf(lane);
-  const name: InkedText = { face: 'sans', sizePx: 12, weight: 500, colour: palette.ink };
+  const name: InkedText = { face: 'sans', sizePx: view.isPhone ? 11 : 12, weight: 500, colour: palette.ink };
   const sub: InkedText = { face: 'sans', sizePx: 11, weight: 400, colour: palette.ink2 };
   const lines = lane.subName === '' ? 1 : lane.id === 'edges' ? 3 : 2;
   const baseY = middle + 4 - ((lines - 1) * LINE_PX) / 2;
@@ -53,7 +53,7 @@ function paintName(sheet: Sheet, lane: LaneLayout): void {
 
 function paintPin(sheet: Sheet, lane: LaneLayout, x: number, baseY: number, style: InkedText): void {
   const { pen, palette, model } = sheet;
-  const { lengthPx } = stickPin(model, lane.heightPx);
+  const { lengthPx } = stickPin(stickScale(model, sheet.view, sheet.pxPerBit, lane.heightPx));
   const top = baseY - 8;
   pen.down(x + 3, top, top + lengthPx, palette.ink2);
   pen.disc(x + 3, top, 2, palette.ink2);
@@ -65,7 +65,7 @@ function paintButtons(sheet: Sheet, lane: LaneLayout): void {
   model.held.forEach((button, i) => {
     pen.text(button.letter, view.gutterPx - 12, heldLineY(lane, i, model.held.length) + 4, {
       face: 'mono',
-      sizePx: 11,
+      sizePx: model.held.length > 3 ? 10 : 11,
       weight: 500,
       colour: palette.ink,
       align: 'center',

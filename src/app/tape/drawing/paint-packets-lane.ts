@@ -46,7 +46,7 @@ function paintSticks(sheet: Sheet, lane: LaneLayout): void {
   const { dx, dy } = model.motion;
   const y = pen.snap(middleOf(lane)) + 0.5;
   pen.across(leftPx, rightPx, y, palette.ink2);
-  const perCount = stickScale(model, lane.heightPx);
+  const perCount = stickScale(model, sheet.view, sheet.pxPerBit, lane.heightPx);
   const columnTicks = STICK_COLUMN_PX * scale.ticksPerPx;
   const first = Math.floor(scale.ticksAt(leftPx) / columnTicks);
   const last = Math.ceil(scale.ticksAt(rightPx) / columnTicks);
@@ -122,7 +122,7 @@ function paintArrow(sheet: Sheet, lane: LaneLayout, mark: PacketMark): void {
   const colour = isSelected ? palette.primary : palette.ink;
   if (mark.x1 - mark.x0 > 6)
     pen.across(mark.x0, mark.x1, lane.topPx + BRACKET_PX, isSelected ? palette.primary : palette.ink2);
-  const perCount = stickScale(model, lane.heightPx);
+  const perCount = stickScale(model, sheet.view, sheet.pxPerBit, lane.heightPx);
   const dx = packets.dx[mark.index] * perCount;
   const dy = packets.dy[mark.index] * perCount;
   const x = (mark.x0 + mark.x1) / 2;

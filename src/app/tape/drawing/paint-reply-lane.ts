@@ -94,21 +94,39 @@ function paintExtensions(sheet: Sheet, d: Dimension): void {
 
 function paintMeasure(sheet: Sheet, d: Dimension): void {
   const { pen, palette } = sheet;
-  const measureEnd = d.verdict === 'violation' && d.limit !== null ? Math.min(d.limit, d.end) : d.end;
-  const text = formatMs(d.latencyS);
-  const style: InkedText = { face: 'mono', sizePx: 14, weight: 600, colour: d.colour, align: 'center' };
-  const from = Math.max(d.on, d.leftPx);
-  const to = Math.min(measureEnd, d.rightPx);
+  const { from, to, end } = measureOf(d);
   if (to > from) pen.across(from, to, d.y, palette.ink);
-  if (measureEnd - d.on > 20) {
+  if (end - d.on > 20) {
     pen.arrowhead(d.on, d.y, Math.PI, palette.ink);
-    if (measureEnd === d.end) pen.arrowhead(d.end, d.y, 0, palette.ink);
+    if (end === d.end) pen.arrowhead(d.end, d.y, 0, palette.ink);
   }
-  const width = textWidth(text, style);
-  if (to - from >= width + 30) pen.label(text, (from + to) / 2, d.y + 5, style, palette.sheet, 4);
-  else if (d.verdict !== 'violation')
-    pen.label(text, d.end + 26, d.y + 5, { ...style, align: 'left' }, palette.sheet, 2);
-  else pen.label(text, d.on - 6, d.y + 5, { ...style, align: 'right' }, palette.sheet, 2);
+  const style = figureInside(d);
+  if (style === null) return;
+  const text = formatMs(d.latencyS);
+  pen.label(
+    text,
+    (from + to) / 2,
+    d.y + style.sizePx * 0.36,
+    { ...style, align: 'center' },
+    palette.sheet,
+    3,
+  );
+}
+
+/** The thin part of the dimension line, as far as it is in view; `end` where it ends on the tape. */
+function measureOf(d: Dimension): { from: number; to: number; end: number } {
+  const end = d.verdict === 'violation' && d.limit !== null ? Math.min(d.limit, d.end) : d.end;
+  return { from: Math.max(d.on, d.leftPx), to: Math.min(end, d.rightPx), end };
+}
+
+/** The figure's type, smaller where the gap is narrow; null where it does not fit at all. */
+function figureInside(d: Dimension): InkedText | null {
+  const { from, to } = measureOf(d);
+  for (const sizePx of [14, 12]) {
+    const style: InkedText = { face: 'mono', sizePx, weight: 600, colour: d.colour };
+    if (to - from >= textWidth(formatMs(d.latencyS), style) + 16) return style;
+  }
+  return null;
 }
 
 function paintLimit(sheet: Sheet, d: Dimension, limit: number): void {
@@ -125,16 +143,22 @@ function paintLimit(sheet: Sheet, d: Dimension, limit: number): void {
   if (left > d.leftPx && left > d.on + 4) pen.label(text, limit - 7, d.y - 13, style, palette.sheet);
 }
 
-/** The glyph beyond the dimension, and by how much the limit is exceeded. */
+/** The glyph beyond the dimension; by how much the limit is exceeded, and the figure itself where it had no room. */
 function paintVerdict(sheet: Sheet, d: Dimension): void {
   const { pen, palette } = sheet;
-  if (d.verdict === null) return;
-  const colour = inkOf(palette, d.verdict);
-  const fits = Math.min(d.end, d.rightPx) - Math.max(d.on, d.leftPx) >= 90;
-  const isPass = d.verdict !== 'violation';
-  const x = isPass ? (fits ? Math.max(d.end, d.limit ?? d.end) + 15 : d.end + 15) : d.end + 16;
-  pen.glyph(d.verdict, x, d.y, GLYPH_PX, colour, palette.sheet);
-  if (d.verdict !== 'violation' || d.limitS === null) return;
-  const text = `${formatFigure((d.latencyS - d.limitS) * 1e3, 2)} ms over`;
-  pen.label(text, x + 14, d.y + 4, { face: 'sans', sizePx: 11, weight: 500, colour }, palette.sheet);
+  const isFigureInside = figureInside(d) !== null;
+  const isOver = d.verdict === 'violation' && d.limitS !== null;
+  const beyond = isOver || !isFigureInside ? d.end : Math.max(d.end, d.limit ?? d.end);
+  let x = beyond + 15;
+  if (d.verdict !== null) {
+    pen.glyph(d.verdict, x, d.y, GLYPH_PX, inkOf(palette, d.verdict), palette.sheet);
+    x += 14;
+  }
+  if (!isFigureInside) {
+    const style: InkedText = { face: 'mono', sizePx: 12, weight: 600, colour: d.colour };
+    x += pen.label(formatMs(d.latencyS), x, d.y + 4, style, palette.sheet) + 10;
+  }
+  if (!isOver) return;
+  const text = `${formatFigure((d.latencyS - (d.limitS ?? 0)) * 1e3, 2)} ms over`;
+  pen.label(text, x, d.y + 4, { face: 'sans', sizePx: 11, weight: 500, colour: d.colour }, palette.sheet);
 }

@@ -49,7 +49,9 @@ export function measuredBitTicks(tape: Pick<Tape, 'tickS' | 'framing'>): number 
  * @param widthPx width of the paper, without the gutter
  */
 export function pxPerBit(tape: Pick<Tape, 'tickS' | 'framing'>, window: TapeWindow, widthPx: number): number {
-  return (nominalBitTicks(tape) * Math.max(1, widthPx)) / (window.endTicks - window.startTicks);
+  const scale = (nominalBitTicks(tape) * Math.max(1, widthPx)) / (window.endTicks - window.startTicks);
+  // A window made for 8 px a bit must not come out as 7.999…: what is drawn changes at such scales.
+  return Number(scale.toPrecision(9));
 }
 
 /** Seconds of the file's own clock at a tick. */
