@@ -1,2 +1,4 @@
 import type { Routes } from '@angular/router';
-export default [] satisfies Routes;
+import { CapturesPage } from './captures-page';
+
+export default [{ path: '', component: CapturesPage }] satisfies Routes;
