@@ -1,4 +1,3 @@
-import { layOutPackets } from './packet-marks';
 import type { InkedText } from './pen';
 import { beamTexts, readOut } from './read-out';
 import type { Sheet } from './sheet';
@@ -36,9 +35,8 @@ function paintLine(sheet: Sheet, ticks: number): void {
 
 /** Where a flag or a nameplate covers the line. */
 function holesAt(sheet: Sheet, x: number): { top: number; bottom: number }[] {
-  const lane = laneOf(sheet, 'packets');
-  if (lane === undefined) return [];
-  return layOutPackets(sheet.model, sheet.view, lane)
+  return sheet
+    .marks()
     .filter((mark) => {
       const isDrawn = mark.kind === 'packet' ? mark.form !== 'arrow' : mark.kind === 'plate' || mark.hasFrame;
       return isDrawn && x >= mark.rect.x - 0.5 && x <= mark.rect.x + mark.rect.width;

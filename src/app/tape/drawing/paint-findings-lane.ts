@@ -1,20 +1,11 @@
-import {
-  CODE_STYLE,
-  HEAD_GLYPH_PX,
-  HEAD_TEXT_PX,
-  layOutHeads,
-  VALUE_GAP_PX,
-  VALUE_STYLE,
-} from './finding-heads';
+import { CODE_STYLE, HEAD_GLYPH_PX, HEAD_TEXT_PX, VALUE_GAP_PX, VALUE_STYLE } from './finding-heads';
 import type { FindingHead } from './finding-heads';
 import type { Sheet } from './sheet';
-import { inkOf, laneOf, plateColours } from './sheet';
+import { inkOf, plateColours } from './sheet';
 
 /** The Findings lane: a head for each finding, the selected one on a plate. */
 export function paintFindingsLane(sheet: Sheet): void {
-  const lane = laneOf(sheet, 'findings');
-  if (lane === undefined) return;
-  for (const head of layOutHeads(sheet.model, sheet.view, lane)) paintHead(sheet, head);
+  for (const head of sheet.heads()) paintHead(sheet, head);
 }
 
 function paintHead(sheet: Sheet, head: FindingHead): void {

@@ -2,7 +2,7 @@ import type { LaneLayout } from './lanes';
 import { edgeScale, referenceName } from './edge-stems';
 import { formatSigned } from './figures';
 import { heldLineY } from './held-bars';
-import { hasFlags, stickPin, stickScale } from './packet-vectors';
+import { hasFlags, stickPin } from './packet-vectors';
 import type { Sheet } from './sheet';
 import { middleOf } from './sheet';
 import type { InkedText } from './pen';
@@ -52,8 +52,8 @@ function paintName(sheet: Sheet, lane: LaneLayout): void {
 }
 
 function paintPin(sheet: Sheet, lane: LaneLayout, x: number, baseY: number, style: InkedText): void {
-  const { pen, palette, model } = sheet;
-  const { lengthPx } = stickPin(stickScale(model, sheet.view, sheet.pxPerBit, lane.heightPx));
+  const { pen, palette } = sheet;
+  const { lengthPx } = stickPin(sheet.stick());
   const top = baseY - 8;
   pen.down(x + 3, top, top + lengthPx, palette.ink2);
   pen.disc(x + 3, top, 2, palette.ink2);

@@ -1,3 +1,4 @@
+import type { Span } from '#shared/time/ticks';
 import { countBefore } from './column-search';
 import { formatPlain } from './figures';
 import type { LaneLayout } from './lanes';
@@ -66,7 +67,6 @@ function paintUse(sheet: Sheet, lane: LaneLayout): void {
   const { pen, palette, scale, model, leftPx, rightPx } = sheet;
   const { used, span } = model.motion;
   const starts = model.packetStarts;
-  const low = model.findings.filter((finding) => finding.rule === 'RPT-1' && finding.verdict === 'violation');
   const columnTicks = COLUMN_PX * scale.ticksPerPx;
   const first = Math.floor(scale.ticksAt(leftPx) / columnTicks);
   const last = Math.ceil(scale.ticksAt(rightPx) / columnTicks);
@@ -77,11 +77,16 @@ function paintUse(sheet: Sheet, lane: LaneLayout): void {
     if (length > 0) {
       const percent = Math.min(MOST_PERCENT, (100 * (used[to] - used[from])) / length);
       const middle = (column + 0.5) * columnTicks;
-      const isLow = low.some((finding) => finding.startTicks <= middle && finding.endTicks >= middle);
+      const isLow = isInside(model.lowUse, middle);
       const x = scale.xOf(column * columnTicks);
       const y = heightOf(lane, percent);
       pen.across(x, x + COLUMN_PX, y, isLow ? palette.violation : palette.ink, isLow ? 2.5 : 2);
     }
     from = to;
   }
+}
+
+/** Whether an instant lies in one of the spans, which are in order of time. */
+function isInside(spans: readonly Span[], ticks: number): boolean {
+  return spans.some((span) => span.startTicks <= ticks && span.endTicks >= ticks);
 }

@@ -1,6 +1,5 @@
 import { formatSigned } from './figures';
 import type { PacketMark } from './packet-marks';
-import { ringCounts } from './packet-vectors';
 import type { InkedText } from './pen';
 import type { Sheet } from './sheet';
 
@@ -50,12 +49,12 @@ function paintCloth(sheet: Sheet, { rect }: PacketMark, colour: string, widthPx:
 }
 
 function paintRing(sheet: Sheet, packet: number, x: number, y: number, radius: number): void {
-  const { pen, palette, model, view } = sheet;
+  const { pen, palette, model } = sheet;
   const { packets } = model.tape;
   pen.ring(x, y, radius, palette.rule);
   pen.across(x - radius, x + radius, y, palette.grid);
   pen.down(x, y - radius, y + radius, palette.grid);
-  const perCount = radius / ringCounts(model, view);
+  const perCount = radius / sheet.ring();
   const tipX = x + packets.dx[packet] * perCount;
   const tipY = y + packets.dy[packet] * perCount;
   let fromX = x;

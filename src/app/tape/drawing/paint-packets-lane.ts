@@ -1,8 +1,7 @@
 import { paintIncident } from './paint-incident';
 import { paintNameplate } from './paint-nameplate';
-import { BRACKET_PX, layOutPackets } from './packet-marks';
+import { BRACKET_PX } from './packet-marks';
 import type { LaneMark, PacketMark } from './packet-marks';
-import { stickScale } from './packet-vectors';
 import { paintPacketFlag } from './paint-packet-flag';
 import { FROM } from './scales';
 import type { Sheet } from './sheet';
@@ -21,7 +20,7 @@ export function paintPacketGround(sheet: Sheet): void {
     paintSticks(sheet, lane);
     return;
   }
-  const marks = layOutPackets(sheet.model, sheet.view, lane);
+  const marks = sheet.marks();
   const arrows = marks.filter((mark) => mark.kind === 'packet' && mark.form === 'arrow');
   if (arrows.length > 0) sheet.pen.across(sheet.leftPx, sheet.rightPx, middleOf(lane), sheet.palette.rule);
   for (const mark of marks)
@@ -31,9 +30,7 @@ export function paintPacketGround(sheet: Sheet): void {
 
 /** What lies over the stems: flags, nameplates, frames of lost packets. */
 export function paintPacketFlags(sheet: Sheet): void {
-  const lane = laneOf(sheet, 'packets');
-  if (lane === undefined) return;
-  for (const mark of layOutPackets(sheet.model, sheet.view, lane)) {
+  for (const mark of sheet.marks()) {
     if (mark.kind === 'plate') paintNameplate(sheet, mark);
     else if (mark.kind === 'incident') paintIncident(sheet, mark);
     else if (mark.form !== 'arrow') paintPacketFlag(sheet, mark);
@@ -46,7 +43,7 @@ function paintSticks(sheet: Sheet, lane: LaneLayout): void {
   const { dx, dy } = model.motion;
   const y = pen.snap(middleOf(lane)) + 0.5;
   pen.across(leftPx, rightPx, y, palette.ink2);
-  const perCount = stickScale(model, sheet.view, sheet.pxPerBit, lane.heightPx);
+  const perCount = sheet.stick();
   const columnTicks = STICK_COLUMN_PX * scale.ticksPerPx;
   const first = Math.floor(scale.ticksAt(leftPx) / columnTicks);
   const last = Math.ceil(scale.ticksAt(rightPx) / columnTicks);
@@ -122,7 +119,7 @@ function paintArrow(sheet: Sheet, lane: LaneLayout, mark: PacketMark): void {
   const colour = isSelected ? palette.primary : palette.ink;
   if (mark.x1 - mark.x0 > 6)
     pen.across(mark.x0, mark.x1, lane.topPx + BRACKET_PX, isSelected ? palette.primary : palette.ink2);
-  const perCount = stickScale(model, sheet.view, sheet.pxPerBit, lane.heightPx);
+  const perCount = sheet.stick();
   const dx = packets.dx[mark.index] * perCount;
   const dy = packets.dy[mark.index] * perCount;
   const x = (mark.x0 + mark.x1) / 2;

@@ -1,4 +1,3 @@
-import { layOutHeads } from './finding-heads';
 import type { FindingHead } from './finding-heads';
 import { dataRows } from './paint-data-lane';
 import type { LaneLayout } from './lanes';
@@ -11,7 +10,7 @@ const TRIANGLE_PX = 8;
 export function paintStems(sheet: Sheet): void {
   const lane = laneOf(sheet, 'findings');
   if (lane === undefined) return;
-  for (const head of layOutHeads(sheet.model, sheet.view, lane)) paintStem(sheet, lane, head);
+  for (const head of sheet.heads()) paintStem(sheet, lane, head);
 }
 
 function paintStem(sheet: Sheet, findings: LaneLayout, head: FindingHead): void {

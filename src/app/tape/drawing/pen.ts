@@ -178,11 +178,12 @@ export class Pen {
     ctx.textBaseline = 'alphabetic';
     ctx.textAlign = 'left';
     let at = style.align === 'right' ? x - width : style.align === 'center' ? x - width / 2 : x;
-    for (const run of textRuns(text, style.face)) {
-      const runStyle = { ...style, face: run.face };
+    const runs = textRuns(text, style.face);
+    for (const run of runs) {
+      const runStyle = runs.length === 1 ? style : { ...style, face: run.face };
       ctx.font = fontOf(runStyle);
       ctx.fillText(run.text, at, baseY);
-      at += textWidth(run.text, runStyle);
+      if (runs.length > 1) at += textWidth(run.text, runStyle);
     }
     return width;
   }
@@ -228,11 +229,11 @@ export class Pen {
     const [outline] = parts;
     if (isOpaque && outline.as === 'stroke' && verdict !== 'not-applicable') {
       ctx.fillStyle = ground;
-      ctx.fill(new Path2D(outline.path));
+      ctx.fill(pathOf(outline.path));
     }
     for (const part of parts) {
       ctx.setLineDash([...(part.dash ?? [])]);
-      const path = new Path2D(part.path);
+      const path = pathOf(part.path);
       if (part.as === 'fill') {
         ctx.fillStyle = colour;
         ctx.fill(path);
@@ -243,6 +244,18 @@ export class Pen {
     }
     ctx.restore();
   }
+}
+
+const paths = new Map<string, Path2D>();
+
+/** The path of a glyph's part, made once. */
+function pathOf(data: string): Path2D {
+  let path = paths.get(data);
+  if (path === undefined) {
+    path = new Path2D(data);
+    paths.set(data, path);
+  }
+  return path;
 }
 
 /** Width of figures set in groups, px. */

@@ -1,5 +1,10 @@
 import type { FindingView } from '#shared/contract/http/checks';
+import { layOutHeads } from './finding-heads';
+import type { FindingHead } from './finding-heads';
 import type { LaneId, LaneLayout } from './lanes';
+import { layOutPackets } from './packet-marks';
+import type { LaneMark } from './packet-marks';
+import { ringCounts, stickScale } from './packet-vectors';
 import type { Palette } from './palette';
 import { Pen } from './pen';
 import { scaleAt } from './scales';
@@ -24,6 +29,12 @@ export interface Sheet {
   /** Left and right edge of the paper, px. */
   readonly leftPx: number;
   readonly rightPx: number;
+  /** Heads and marks of this frame, laid out when first asked for. */
+  readonly heads: () => readonly FindingHead[];
+  readonly marks: () => readonly LaneMark[];
+  /** Counts of the ring, and px a count of movements without one. */
+  readonly ring: () => number;
+  readonly stick: () => number;
 }
 
 export function makeSheet(
@@ -46,7 +57,28 @@ export function makeSheet(
     scaleName: scaleAt(perBit),
     leftPx: view.gutterPx,
     rightPx: view.widthPx,
+    heads: once(() => withLane(lanes, 'findings', (lane) => layOutHeads(model, view, lane))),
+    marks: once(() => withLane(lanes, 'packets', (lane) => layOutPackets(model, view, lane))),
+    ring: once(() => ringCounts(model, view)),
+    stick: once(() => {
+      const lane = lanes.find((candidate) => candidate.id === 'packets');
+      return lane === undefined ? 1 : stickScale(model, view, perBit, lane.heightPx);
+    }),
   };
+}
+
+function once<T>(make: () => T): () => T {
+  let made: { readonly value: T } | undefined;
+  return () => (made ??= { value: make() }).value;
+}
+
+function withLane<T>(
+  lanes: readonly LaneLayout[],
+  id: LaneId,
+  layOut: (lane: LaneLayout) => readonly T[],
+): readonly T[] {
+  const lane = lanes.find((candidate) => candidate.id === id);
+  return lane === undefined ? [] : layOut(lane);
 }
 
 export function laneOf(sheet: Pick<Sheet, 'lanes'>, id: LaneId): LaneLayout | undefined {

@@ -136,28 +136,37 @@ function paintResets(pen: Pen, model: TapeModel, view: StripView, palette: Palet
 
 /** Violations and inconclusive findings on the base line; violations last, so that none is covered. */
 function paintMarks(pen: Pen, model: TapeModel, view: StripView, palette: Palette): void {
-  const scale = wholeScale(model, view);
+  const { ctx } = pen;
   const y = BASE_PX + 3;
-  for (const verdict of ['inconclusive', 'violation'] as const) {
-    let takenTo = -Infinity;
-    for (let i = 0; i < model.findingOrder.length; i++) {
-      if (model.findings[model.findingOrder[i]].verdict !== verdict) continue;
-      const x = Math.min(Math.max(scale.xOf(model.findingTicks[i]), view.gutterPx + 4), view.widthPx - 4);
-      if (x < takenTo) continue;
-      takenTo = x + 1;
-      if (verdict === 'violation') {
-        pen.polygon(
-          [
-            [x, y - 4.5],
-            [x + 4.5, y],
-            [x, y + 4.5],
-            [x - 4.5, y],
-          ],
-          palette.violation,
-        );
-      } else pen.fill({ x: x - 2.5, y: y - 2.5, width: 5, height: 5 }, palette.open);
-    }
+  ctx.fillStyle = palette.open;
+  ctx.beginPath();
+  for (const x of marksOf(model, view, 'inconclusive')) ctx.rect(x - 2.5, y - 2.5, 5, 5);
+  ctx.fill();
+  ctx.fillStyle = palette.violation;
+  ctx.beginPath();
+  for (const x of marksOf(model, view, 'violation')) {
+    ctx.moveTo(x, y - 4.5);
+    ctx.lineTo(x + 4.5, y);
+    ctx.lineTo(x, y + 4.5);
+    ctx.lineTo(x - 4.5, y);
+    ctx.closePath();
   }
+  ctx.fill();
+}
+
+/** Places of the marks of one verdict, at least 2 px apart. */
+function marksOf(model: TapeModel, view: StripView, verdict: 'violation' | 'inconclusive'): number[] {
+  const scale = wholeScale(model, view);
+  const places: number[] = [];
+  let takenTo = -Infinity;
+  for (let i = 0; i < model.findingOrder.length; i++) {
+    if (model.findings[model.findingOrder[i]].verdict !== verdict) continue;
+    const x = Math.min(Math.max(scale.xOf(model.findingTicks[i]), view.gutterPx + 4), view.widthPx - 4);
+    if (x < takenTo) continue;
+    takenTo = x + 2;
+    places.push(x);
+  }
+  return places;
 }
 
 function paintGutter(pen: Pen, view: StripView, palette: Palette): void {

@@ -4,6 +4,7 @@ import type { Tape, TapeLine } from '#shared/contract/tape-payload';
 import type { LineRole } from '#shared/line/line-map';
 import { findMotionRuns } from '#shared/packets/motion-runs';
 import type { MotionRun } from '#shared/packets/motion-runs';
+import type { Span } from '#shared/time/ticks';
 import type { FindingPlace } from './finding-places';
 import { placeFinding } from './finding-places';
 import { findHeldButtons } from './held-buttons';
@@ -46,6 +47,8 @@ export interface TapeModel {
   readonly incidentEnds: Float64Array;
   readonly motion: MotionSums;
   readonly runs: readonly MotionRun[];
+  /** Where RPT-1 is violated. */
+  readonly lowUse: readonly Span[];
   readonly held: readonly HeldButton[];
   readonly replies: readonly Reply[];
   /** Where each finding stands. */
@@ -89,6 +92,7 @@ export function buildTapeModel(tape: Tape, findings: readonly FindingView[], lim
     ),
     motion: sumMotion(tape.packets, packetStarts, runs, elements * bitTicks),
     runs,
+    lowUse: findings.filter((finding) => finding.rule === 'RPT-1' && finding.verdict === 'violation'),
     held: findHeldButtons(tape.packets, packetEnds, tape.endTicks),
     replies: findReplies(tape, findings),
     places,

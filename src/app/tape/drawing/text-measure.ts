@@ -31,11 +31,27 @@ export function textRuns(text: string, face: TextStyle['face']): { text: string;
     .filter((run) => run.text !== '');
 }
 
+/** Widths of words at 100 px, by weight and text. Words repeat from frame to frame. */
+const widths = new Map<string, number>();
+const MOST_WIDTHS = 5000;
+const MEASURED_PX = 100;
+
 let measuring: OffscreenCanvasRenderingContext2D | null | undefined;
 
 /** Width of a text in px. Needs no canvas of its own, so that painting and hit testing agree. */
 export function textWidth(text: string, style: TextStyle): number {
   if (style.face === 'mono') return text.length * MONO_EM * style.sizePx;
+  const key = `${style.weight} ${text}`;
+  let width = widths.get(key);
+  if (width === undefined) {
+    width = measureRuns(text, { ...style, sizePx: MEASURED_PX });
+    if (widths.size >= MOST_WIDTHS) widths.clear();
+    widths.set(key, width);
+  }
+  return (width * style.sizePx) / MEASURED_PX;
+}
+
+function measureRuns(text: string, style: TextStyle): number {
   let width = 0;
   for (const run of textRuns(text, style.face)) {
     width += run.face === 'mono' ? run.text.length * MONO_EM * style.sizePx : wordsWidth(run.text, style);
@@ -44,10 +60,15 @@ export function textWidth(text: string, style: TextStyle): number {
 }
 
 function wordsWidth(text: string, style: TextStyle): number {
-  if (measuring === undefined) {
-    measuring = typeof OffscreenCanvas === 'undefined' ? null : new OffscreenCanvas(1, 1).getContext('2d');
-  }
+  measuring ??= prepareMeasuring();
   if (measuring === null) return text.length * SANS_EM * style.sizePx;
   measuring.font = fontOf(style);
   return measuring.measureText(text).width;
+}
+
+function prepareMeasuring(): OffscreenCanvasRenderingContext2D | null {
+  if (typeof OffscreenCanvas === 'undefined') return null;
+  // A font that arrives late changes every width measured with its stand-in.
+  if (typeof document !== 'undefined') document.fonts?.addEventListener('loadingdone', () => widths.clear());
+  return new OffscreenCanvas(1, 1).getContext('2d');
 }
