@@ -16,19 +16,26 @@ export interface EdgeStem extends PlacedEdge {
 
 /** Percent of a bit shown above and below the zero line, unless the limit needs more. */
 const RANGE_PERCENT = 8;
-const MARGIN_PX = 10;
+const MARGIN_PX = 18;
 
 /** Where the zero line runs and how tall one percent is. */
 export function edgeScale(
   model: TapeModel,
+  view: Pick<TapeView, 'edgeReference'>,
   lane: LaneLayout,
 ): { readonly zeroY: number; readonly pxPerPercent: number; readonly range: number } {
-  const range = Math.max(RANGE_PERCENT, 1.6 * (model.limits.distortionLimit ?? 0));
+  const range = Math.max(RANGE_PERCENT, 1.6 * (edgeLimit(model, view) ?? 0));
   return {
     zeroY: lane.topPx + lane.heightPx / 2,
     pxPerPercent: (lane.heightPx / 2 - MARGIN_PX) / range,
     range,
   };
+}
+
+/** The limit that goes with the due places, percent of a bit: of FRM-8 at the measured rate, of FRM-2 at the nominal. */
+export function edgeLimit(model: TapeModel, view: Pick<TapeView, 'edgeReference'>): number | null {
+  const { distortionLimit, grossDistortionLimit } = model.limits;
+  return view.edgeReference === 'nominal' ? grossDistortionLimit : distortionLimit;
 }
 
 /** What the due places are taken from, in words. */
@@ -46,7 +53,7 @@ export function layOutEdges(model: TapeModel, view: TapeView): EdgeStem[] {
   const { data } = model.lines;
   if (data === undefined) return [];
   const unit = view.edgeReference === 'nominal' ? model.nominalBitTicks : model.bitTicks;
-  const limit = model.limits.distortionLimit;
+  const limit = edgeLimit(model, view);
   const doubt = samplePercent(model);
   const { first, end } = charactersIn(model, view.window.startTicks, view.window.endTicks);
   const stems: EdgeStem[] = [];

@@ -1,5 +1,5 @@
 import { countBefore, countUpTo } from './column-search';
-import { isWorse, shortValue } from './finding-words';
+import { leadsBefore, shortValue } from './finding-words';
 import type { LaneLayout } from './lanes';
 import type { Rect } from './pen';
 import { scaleAt } from './scales';
@@ -85,10 +85,7 @@ function joinPins(model: TapeModel, view: TapeView, joinPx: number): Pin[] {
       last.lead = index;
       last.x = x;
       last.isSelected = true;
-    } else if (
-      !last.isSelected &&
-      isWorse(model.findings[index].verdict, model.findings[last.lead].verdict)
-    ) {
+    } else if (!last.isSelected && leadsBefore(model.findings[index], model.findings[last.lead])) {
       last.lead = index;
       last.x = x;
     }

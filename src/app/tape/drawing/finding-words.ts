@@ -58,12 +58,12 @@ export function shortValue(finding: FindingView): string {
     if (verdict === 'not-shown') return 'not shown';
     return SHORT[rule] ?? '';
   }
-  const name = rule === 'HSK-7' ? 'pulse ' : '';
+  if (rule === 'HSK-7') return `pulse ${formatPlain(measured, 1)}${unitSign(unit)}`;
   if (verdict === 'inconclusive' && uncertainty !== null) {
     const decimals = DECIMALS[unit ?? ''] ?? 2;
     return `${measured.toFixed(decimals)} ± ${uncertainty.toFixed(decimals)}${unitSign(unit)}`;
   }
-  const value = name + withUnit(measured, unit);
+  const value = withUnit(measured, unit);
   return verdict === 'violation' && limit !== null ? `${value}, limit ${formatPlain(limit, 2)}` : value;
 }
 
@@ -85,4 +85,12 @@ const RANK: Readonly<Record<FindingView['verdict'], number>> = {
 /** Whether the first verdict weighs more than the second. */
 export function isWorse(a: FindingView['verdict'], b: FindingView['verdict']): boolean {
   return RANK[a] > RANK[b];
+}
+
+const SEVERITY: Readonly<Record<FindingView['severity'], number>> = { blocking: 2, warning: 1, note: 0 };
+
+/** Whether the first finding leads a head before the second: the worse verdict, then the graver rule. */
+export function leadsBefore(a: FindingView, b: FindingView): boolean {
+  if (a.verdict !== b.verdict) return isWorse(a.verdict, b.verdict);
+  return SEVERITY[a.severity] > SEVERITY[b.severity];
 }

@@ -1,9 +1,10 @@
 import type { FindingView } from '#shared/contract/http/checks';
 import { charactersIn } from './characters-in-view';
 import { countBefore } from './column-search';
-import { formatMs, shortPosition } from './figures';
+import { formatMs, hexByte, shortPosition } from './figures';
 import type { LaneId, LaneLayout } from './lanes';
 import type { Rect } from './pen';
+import { hasCells } from './selection-places';
 import type { TapeModel } from './tape-model';
 import type { TextStyle } from './text-measure';
 import { textWidth } from './text-measure';
@@ -51,7 +52,7 @@ function draftFor(id: LaneId, model: TapeModel, view: TapeView): Draft | undefin
     case 'reply':
       return replyNote(model, view);
     case 'data':
-      return dataNote(model);
+      return dataNote(model, view);
     case 'packets':
       return packetNote(model, view);
     case 'findings':
@@ -79,14 +80,25 @@ function replyNote(model: TapeModel, view: TapeView): Draft | undefined {
   };
 }
 
-function dataNote(model: TapeModel): Draft | undefined {
-  if (model.tape.characters.count > 0) return undefined;
-  if (model.lines.data === undefined) return plain('No data line in this capture');
-  return plain(
-    model.lines.data.ticks.length === 0
-      ? 'No characters: the line never changes'
-      : 'No characters on the line',
-  );
+function dataNote(model: TapeModel, view: TapeView): Draft | undefined {
+  const { characters } = model.tape;
+  const { startTicks, endTicks } = view.window;
+  if (characters.count === 0) {
+    if (model.lines.data === undefined) return plain('No data line in this capture');
+    const isStill = model.lines.data.ticks.length === 0;
+    return plain(isStill ? 'No characters: the line never changes' : 'No characters on the line');
+  }
+  const { first, end } = charactersIn(model, startTicks, endTicks);
+  if (end > first || !hasCells(model, view)) return undefined;
+  const nearest = first > 0 ? first - 1 : 0;
+  const at = characters.startTicks[nearest];
+  return {
+    side: at > endTicks ? 'behind' : 'before',
+    verdict: null,
+    figure: hexByte(characters.values[nearest]),
+    words: `at ${shortPosition(model.tape, at)}`,
+    ticks: at,
+  };
 }
 
 function packetNote(model: TapeModel, view: TapeView): Draft | undefined {

@@ -207,8 +207,10 @@ function subNameOf(id: LaneId, model: TapeModel, view: TapeView, perBit: number,
       return 'in motion';
     case 'packets': {
       if (model.tape.packets.count === 0) return '';
-      if (!hasFlags(model, perBit))
-        return `${stickPin(stickScale(model, view, perBit, heightPx)).counts} counts`;
+      if (!hasFlags(model, perBit)) {
+        const { counts } = stickPin(stickScale(model, view, perBit, heightPx));
+        return counts === 1 ? '1 count' : `${counts} counts`;
+      }
       const ring = `ring ${ringCounts(model, view)}`;
       return view.gutterPx < 90 ? ring : `${ring} counts`;
     }

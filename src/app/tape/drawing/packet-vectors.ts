@@ -4,8 +4,8 @@ import { scaleAt } from './scales';
 import type { TapeModel } from './tape-model';
 import type { TapeView } from './view';
 
-/** What the ring of a packet flag can stand for, counts. Source: design 7. */
-const RINGS = [4, 8, 16, 32, 64, 128] as const;
+/** What the ring of a packet flag can stand for, counts; the last two for packets that hold two steps. Source: design 7. */
+const RINGS = [4, 8, 16, 32, 64, 128, 256, 512] as const;
 
 /** A packet this wide carries a flag with a ring; narrower ones are arrows only, px. */
 export const FLAG_FROM_PX = 70;

@@ -55,7 +55,7 @@ function collect(sheet: Sheet, rows: DataRows, c: number, parts: Parts): void {
   const cell = cellOf(model, scale, c);
   const step = model.nominalBitTicks / scale.ticksPerPx;
   if (step < HATCH_FROM_PX) return;
-  const isBitwise = step >= FROM.packetNumber;
+  const isBitwise = sheet.pxPerBit >= FROM.packetNumber;
   const bits = bitsOf(sheet, c);
   const height = rows.cellBottom - rows.cellTop;
   const isBroken = (characters.errors[c] & (FRAMING_ERROR | BREAK_ERROR)) !== 0;

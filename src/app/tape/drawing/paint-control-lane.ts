@@ -84,11 +84,12 @@ function paintPulse(sheet: Sheet, lane: LaneLayout, pulse: Pulse): number {
   const { pen, palette, leftPx, rightPx } = sheet;
   const style = { face: 'sans', sizePx: 11, weight: 400, colour: palette.ink } as const;
   const width = textWidth(pulse.text, style);
-  const baseY = middleOf(lane) - (pulse.isSurvey ? 6 : 8);
+  const baseY = middleOf(lane) - (pulse.isSurvey ? 7 : 8);
   // Over its hairline where it fits, else right of the post.
   const isInside = !pulse.isSurvey && pulse.x1 - pulse.x0 >= width - 10;
   const x = isInside ? Math.max(leftPx + 6, (pulse.x0 + pulse.x1 - width) / 2) : pulse.x1 + 5;
   if (x < pulse.takenTo || x + width > rightPx - 2) return -Infinity;
-  pen.label(pulse.text, x, baseY, style, palette.sheet, 2);
+  if (pulse.isSurvey) pen.text(pulse.text, x, baseY, style);
+  else pen.label(pulse.text, x, baseY, style, palette.sheet, 2);
   return x + width + 8;
 }

@@ -1,5 +1,5 @@
 import { charactersIn } from './characters-in-view';
-import { edgeScale, layOutEdges, samplePercent } from './edge-stems';
+import { edgeLimit, edgeScale, layOutEdges, samplePercent } from './edge-stems';
 import type { EdgeStem } from './edge-stems';
 import { formatSigned } from './figures';
 import type { LaneLayout } from './lanes';
@@ -17,7 +17,7 @@ export function paintEdgesLane(sheet: Sheet): void {
   const lane = laneOf(sheet, 'edges');
   if (lane === undefined) return;
   const { pen, palette, leftPx, rightPx, model } = sheet;
-  const { zeroY } = edgeScale(model, lane);
+  const { zeroY } = edgeScale(model, sheet.view, lane);
   paintLimits(sheet, lane);
   pen.across(leftPx, rightPx, zeroY, palette.ink2);
   if (sheet.pxPerBit >= FROM.samples) paintSamples(sheet, zeroY);
@@ -30,9 +30,9 @@ export function paintEdgesLane(sheet: Sheet): void {
 
 function paintLimits(sheet: Sheet, lane: LaneLayout): void {
   const { pen, palette, leftPx, rightPx, model } = sheet;
-  const limit = model.limits.distortionLimit;
+  const limit = edgeLimit(model, sheet.view);
   if (limit === null) return;
-  const { zeroY, pxPerPercent } = edgeScale(model, lane);
+  const { zeroY, pxPerPercent } = edgeScale(model, sheet.view, lane);
   for (const side of [-1, 1]) {
     const y = zeroY + side * limit * pxPerPercent;
     const band = { x: leftPx, y: side < 0 ? y - BAND_PX : y, width: rightPx - leftPx, height: BAND_PX };
@@ -63,7 +63,7 @@ function paintStem(
   taken: { above: number; below: number },
 ): void {
   const { pen, palette, scale, model } = sheet;
-  const { zeroY, pxPerPercent, range } = edgeScale(model, lane);
+  const { zeroY, pxPerPercent, range } = edgeScale(model, sheet.view, lane);
   const x = scale.xOf(edge.dueTicks);
   const shown = Math.max(-range, Math.min(range, edge.displacement));
   const y = zeroY - shown * pxPerPercent;

@@ -1,5 +1,5 @@
 import type { LaneLayout } from './lanes';
-import { edgeScale, referenceName } from './edge-stems';
+import { edgeLimit, edgeScale, referenceName } from './edge-stems';
 import { formatSigned } from './figures';
 import { heldLineY } from './held-bars';
 import { hasFlags, stickPin } from './packet-vectors';
@@ -75,9 +75,9 @@ function paintButtons(sheet: Sheet, lane: LaneLayout): void {
 
 function paintEdgeLimits(sheet: Sheet, lane: LaneLayout): void {
   const { pen, palette, view, model } = sheet;
-  const limit = model.limits.distortionLimit;
+  const limit = edgeLimit(model, sheet.view);
   if (limit === null) return;
-  const { zeroY, pxPerPercent } = edgeScale(model, lane);
+  const { zeroY, pxPerPercent } = edgeScale(model, sheet.view, lane);
   for (const side of [1, -1]) {
     pen.text(formatSigned(side * limit), view.gutterPx - 7, zeroY - side * limit * pxPerPercent + 4, {
       face: 'mono',

@@ -24,7 +24,7 @@ export function paintPacketFlag(sheet: Sheet, mark: PacketMark): void {
   const y = mark.rect.y + mark.rect.height / 2;
   paintRing(sheet, mark.index, x, y, radius);
   if (mark.form === 'ring') return;
-  const right = mark.form === 'flag' ? x + radius + 60 : mark.rect.x + mark.rect.width - TAIL_PX - 6;
+  const right = mark.form === 'flag' ? x + radius + 63 : mark.rect.x + mark.rect.width - TAIL_PX - 6;
   paintFigures(sheet, mark, x + radius + 14, right, y);
   if (mark.form === 'flag' && sheet.model.tape.packets.hasWheel)
     paintLadder(sheet, mark.index, mark.rect.x + mark.rect.width - 24, y);

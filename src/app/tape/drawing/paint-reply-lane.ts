@@ -141,6 +141,7 @@ function paintLimit(sheet: Sheet, d: Dimension, limit: number): void {
   const style: InkedText = { face: 'sans', sizePx: 11, weight: 400, colour: palette.ink2, align: 'right' };
   const left = limit - 7 - textWidth(text, style);
   if (left > d.leftPx && left > d.on + 4) pen.label(text, limit - 7, d.y - 13, style, palette.sheet);
+  else pen.label(text, limit + 7, d.y - 13, { ...style, align: 'left' }, palette.sheet);
 }
 
 /** The glyph beyond the dimension; by how much the limit is exceeded, and the figure itself where it had no room. */
@@ -148,7 +149,7 @@ function paintVerdict(sheet: Sheet, d: Dimension): void {
   const { pen, palette } = sheet;
   const isFigureInside = figureInside(d) !== null;
   const isOver = d.verdict === 'violation' && d.limitS !== null;
-  const beyond = isOver || !isFigureInside ? d.end : Math.max(d.end, d.limit ?? d.end);
+  const beyond = isOver ? d.end : Math.max(d.end, d.limit ?? d.end);
   let x = beyond + 15;
   if (d.verdict !== null) {
     pen.glyph(d.verdict, x, d.y, GLYPH_PX, inkOf(palette, d.verdict), palette.sheet);

@@ -1,5 +1,6 @@
 import type { Tape } from '#shared/contract/tape-payload';
 import type { FindingView } from '#shared/contract/http/checks';
+import { isWorse } from './finding-words';
 
 /** What a reset got for an answer, and how the check judged its latency. */
 export interface Reply {
@@ -14,12 +15,18 @@ export interface Reply {
   readonly finding: number;
 }
 
-/** The replies in order of time. The finding of HSK-1, else that of HSK-8 or HSK-4, is the one that began at RTS ON. */
+/** Rules that judge the answer to a reset, the one that leads first. */
+const RULES = ['HSK-1', 'HSK-8', 'HSK-4'] as const;
+
+/** The replies in order of time, each with the worst finding on it that began at RTS ON. */
 export function findReplies(tape: Tape, findings: readonly FindingView[]): Reply[] {
   const judged = new Map<number, number>();
-  for (const rule of ['HSK-4', 'HSK-8', 'HSK-1']) {
+  for (const rule of RULES) {
     findings.forEach((finding, i) => {
-      if (finding.rule === rule) judged.set(finding.startTicks, i);
+      if (finding.rule !== rule) return;
+      const other = judged.get(finding.startTicks);
+      if (other === undefined || isWorse(finding.verdict, findings[other].verdict))
+        judged.set(finding.startTicks, i);
     });
   }
   return tape.resets.map((reset, r) => {

@@ -24,6 +24,8 @@ export interface TapeLimits {
   readonly lineUseLimit: number | null;
   /** Of FRM-8, percent of a bit; taken from a finding of FRM-8 where left out. */
   readonly distortionLimit?: number | null;
+  /** Of FRM-2, percent of a bit; taken from a finding of FRM-2 where left out. */
+  readonly grossDistortionLimit?: number | null;
 }
 
 /** A tape with everything that is worked out once, so that a frame only looks up what is in view. */
@@ -73,7 +75,11 @@ export function buildTapeModel(tape: Tape, findings: readonly FindingView[], lim
   return {
     tape,
     findings,
-    limits: { ...limits, distortionLimit: limits.distortionLimit ?? statedDistortionLimit(findings) },
+    limits: {
+      ...limits,
+      distortionLimit: limits.distortionLimit ?? limitOf(findings, 'FRM-8'),
+      grossDistortionLimit: limits.grossDistortionLimit ?? limitOf(findings, 'FRM-2'),
+    },
     lines,
     bitTicks,
     nominalBitTicks: nominal,
@@ -101,8 +107,8 @@ export function buildTapeModel(tape: Tape, findings: readonly FindingView[], lim
   };
 }
 
-function statedDistortionLimit(findings: readonly FindingView[]): number | null {
-  return findings.find((finding) => finding.rule === 'FRM-8')?.limit ?? null;
+function limitOf(findings: readonly FindingView[], rule: string): number | null {
+  return findings.find((finding) => finding.rule === rule)?.limit ?? null;
 }
 
 function spansOfPackets({ packets, characters }: Tape): {
