@@ -1,9 +1,15 @@
 import { defineConfig } from 'vitest/config';
 
-/** Everything but the client (`ng test`) and the browser (`playwright test`). */
+/** Everything but the client (`ng test`) and the browser (`playwright test`); the drawing of the tape needs neither. */
 export default defineConfig({
   test: {
-    include: ['shared/**/*.spec.ts', 'server/**/*.spec.ts', 'spec/**/*.spec.ts', 'samples/**/*.spec.ts'],
+    include: [
+      'shared/**/*.spec.ts',
+      'server/**/*.spec.ts',
+      'spec/**/*.spec.ts',
+      'samples/**/*.spec.ts',
+      'src/app/tape/drawing/**/*.spec.ts',
+    ],
     exclude: ['spec/browser/**', '**/node_modules/**'],
     testTimeout: 30_000,
     pool: 'forks',

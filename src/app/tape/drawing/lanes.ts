@@ -212,7 +212,7 @@ function subNameOf(id: LaneId, model: TapeModel, view: TapeView, perBit: number,
         return counts === 1 ? '1 count' : `${counts} counts`;
       }
       const ring = `ring ${ringCounts(model, view)}`;
-      return view.gutterPx < 90 ? ring : `${ring} counts`;
+      return view.gutterPx < 90 || ring.length > 7 ? ring : `${ring} counts`;
     }
     default:
       return '';
