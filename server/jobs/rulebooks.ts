@@ -4,6 +4,7 @@ import { BASELINE } from '#shared/rules/baseline';
 import { RULE_DEFINITIONS } from '#shared/rules/definitions';
 import { HOST_LIMITS } from '#shared/rules/host-limits';
 import type { Rulebook } from '#shared/rules/rulebook';
+import { NotFound } from '../services/service-error';
 
 /** The rulebooks that ship with the product. */
 export const RULEBOOKS: Readonly<Record<RulebookKey, Rulebook>> = {
@@ -20,8 +21,10 @@ export function listRulebooks(): RulebookSummary[] {
   return RULEBOOK_KEYS.map(toSummary);
 }
 
-/** A rulebook with every rule of the product, also those it does not set. */
-export function viewRulebook(key: RulebookKey): RulebookView {
+/** A rulebook with every rule of the product, also those it does not set. @throws NotFound where there is none of this key */
+export function viewRulebook(wanted: string): RulebookView {
+  const key = RULEBOOK_KEYS.find((one) => one === wanted);
+  if (key === undefined) throw new NotFound('This rulebook');
   const settings = new Map(RULEBOOKS[key].rules.map((setting) => [setting.id, setting]));
   const rules = RULE_DEFINITIONS.map((definition) => {
     const setting = settings.get(definition.id);

@@ -80,21 +80,20 @@ function ofMulter(error: MulterError): Cause {
   return { status: 400, code: 'broken-body', detail: `The upload cannot be used: ${error.message}.` };
 }
 
+/** By the types of the body's parser. */
+const PARSER_DETAILS: Readonly<Record<string, readonly [code: string, detail: string]>> = {
+  'entity.parse.failed': ['bad-json', 'The body is no JSON.'],
+  'entity.too.large': ['too-large', 'The body is larger than the limit.'],
+  'encoding.unsupported': ['refused', 'The packing of the body is not known.'],
+  'charset.unsupported': ['refused', 'The character set of the body is not known.'],
+};
+
 /** Errors that Express and its parsers throw with a status of their own. */
 function ofHttp(error: unknown): Cause | null {
-  const { status, type, expose } = (error ?? {}) as { status?: unknown; type?: unknown; expose?: unknown };
+  const { status, type } = (error ?? {}) as { status?: unknown; type?: unknown };
   if (typeof status !== 'number' || status < 400 || status > 499) return null;
-  if (type === 'entity.parse.failed') {
-    return { status, code: 'bad-json', detail: 'The body is no JSON.' };
-  }
-  if (type === 'entity.too.large') {
-    return { status, code: 'too-large', detail: 'The body is larger than the limit.' };
-  }
   if (status === 401) return { status, code: 'not-signed-in', detail: 'Sign in first.' };
-  const detail = expose === false ? 'The request cannot be used.' : messageOf(error);
-  return { status, code: 'refused', detail };
-}
-
-function messageOf(error: unknown): string {
-  return error instanceof Error ? error.message : 'The request cannot be used.';
+  if (error instanceof URIError) return { status, code: 'bad-path', detail: 'The path has a broken escape.' };
+  const [code, detail] = PARSER_DETAILS[String(type)] ?? ['refused', 'The request cannot be used.'];
+  return { status, code, detail };
 }

@@ -241,7 +241,7 @@ export const ENDPOINTS = {
   'GET /rulebooks/:key': {
     topic: 'Checks',
     summary: 'A rulebook with all its rules',
-    params: z.object({ key: rulebooks.rulebookKeySchema }),
+    params: z.object({ key: z.string().min(1).max(60) }),
     answer: rulebooks.rulebookViewSchema,
   },
 
