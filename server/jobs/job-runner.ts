@@ -69,8 +69,9 @@ export class JobRunner {
 
   /** Ends a queued or running job. A job that is over stays as it is. */
   async cancel(jobId: number): Promise<void> {
-    this.running.get(jobId)?.abort.abort();
     const job = await this.store.write((manager) => endJob(manager, jobId, 'cancelled', null));
+    // Only now: work that breaks off before its row says why would be begun again.
+    this.running.get(jobId)?.abort.abort();
     if (job !== null) this.tell(job);
   }
 
@@ -162,15 +163,14 @@ export class JobRunner {
 
   /** The thread crashed, ran out of memory, fell silent, or was ended by us. */
   private async recover(job: Job, error: unknown): Promise<void> {
-    const fresh = await this.store.reader.findOneBy(Job, { id: job.id });
-    // Cancelled, or deleted with its capture.
-    if (fresh?.state !== 'running') return;
-    if (this.isStopping) {
-      await this.store.write((manager) => giveBack(manager, { ...fresh, attempts: fresh.attempts - 1 }));
-      return;
-    }
-    this.logger.error({ err: error, job: job.id, attempts: fresh.attempts }, 'a job broke off');
-    const after = await this.store.write((manager) => giveBack(manager, fresh));
+    const after = await this.store.write(async (manager) => {
+      const fresh = await manager.findOneBy(Job, { id: job.id, state: 'running' });
+      // Cancelled, or deleted with its capture.
+      if (fresh === null) return null;
+      if (this.isStopping) return giveBack(manager, { ...fresh, attempts: fresh.attempts - 1 });
+      this.logger.error({ err: error, job: job.id, attempts: fresh.attempts }, 'a job broke off');
+      return giveBack(manager, fresh);
+    });
     if (after !== null) this.tell(after);
   }
 
