@@ -39,12 +39,12 @@ export function downloadRoutes(router: EndpointRouter, { downloads, tickets }: S
 
 /** The download a path below `/api` stands for. Whoever may sign in may have all of them: see the table of permissions. */
 async function findDownload(downloads: Services['downloads'], path: string): Promise<Download> {
-  const url = new URL(path, 'http://localhost');
-  const capture = captureNumberSchema.safeParse(CAPTURE_PATH.exec(url.pathname)?.[1]);
+  const [pathname, query] = path.split('?', 2);
+  const capture = captureNumberSchema.safeParse(CAPTURE_PATH.exec(pathname)?.[1]);
   if (capture.success) return downloads.capture(capture.data);
-  const [, id, kind] = PRODUCT_PATH.exec(url.pathname) ?? [];
+  const [, id, kind] = PRODUCT_PATH.exec(pathname) ?? [];
   if (kind !== undefined) {
-    const { check } = productQuerySchema.parse(Object.fromEntries(url.searchParams));
+    const { check } = productQuerySchema.parse(Object.fromEntries(new URLSearchParams(query)));
     return downloads.product(kind as DownloadKind, Number(id), check);
   }
   throw new Invalid('no-download', 'This is no path of a download.', {
