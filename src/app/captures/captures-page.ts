@@ -1,9 +1,10 @@
+import type {
+  ElementRef} from '@angular/core';
 import {
   ChangeDetectionStrategy,
   Component,
   computed,
   effect,
-  ElementRef,
   inject,
   input,
   signal,
@@ -102,8 +103,10 @@ export class CapturesPage {
       }) as CaptureQuery,
   );
   protected readonly isFiltered = computed(() => {
-    const { sort: _sort, page: _page, ...rest } = this.query();
-    return Object.values(rest).some((value) => value !== undefined && value !== '');
+    const { search, device, build, owner, state, verdict } = this.query();
+    return [search, device, build, owner, state, verdict].some(
+      (value) => value !== undefined && value !== '',
+    );
   });
   protected readonly workspace = loadWhen(
     computed(() => 0),

@@ -1,0 +1,25 @@
+/** A canvas sized to its wrapper in device pixels, painted in CSS px. */
+export interface PaintSurface {
+  readonly ctx: CanvasRenderingContext2D;
+  readonly widthPx: number;
+  readonly heightPx: number;
+}
+
+/** Fits the canvas to a size in CSS px and returns its context, scaled. null where the browser gives none (or nothing fits). */
+export function prepareSurface(
+  canvas: HTMLCanvasElement,
+  widthPx: number,
+  heightPx: number,
+): PaintSurface | null {
+  const ratio = window.devicePixelRatio || 1;
+  const [width, height] = [Math.round(widthPx * ratio), Math.round(heightPx * ratio)];
+  if (canvas.width !== width || canvas.height !== height) {
+    canvas.width = width;
+    canvas.height = height;
+  }
+  if (width === 0 || height === 0) return null;
+  const ctx = canvas.getContext('2d');
+  if (ctx === null) return null;
+  ctx.setTransform(ratio, 0, 0, ratio, 0, 0);
+  return { ctx, widthPx, heightPx };
+}
