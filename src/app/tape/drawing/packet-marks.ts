@@ -63,10 +63,11 @@ export function layOutPackets(model: TapeModel, view: TapeView, lane: LaneLayout
   if (scaleAt(perBit) === 'survey') return smallPlates(model, view, lane);
   const raw = collect(model, view);
   const canFlag = hasFlags(model, perBit);
-  return raw.map((mark, i) => {
+  const marks = raw.map((mark, i) => {
     const next = raw[i + 1]?.x0 ?? Infinity;
     return place(model, view, lane, mark, next, canFlag);
   });
+  return marks.filter((mark) => mark.x0 <= view.widthPx);
 }
 
 interface RawMark extends Mark {
