@@ -115,7 +115,8 @@ function publicUrlOf(text: string | undefined, host: string, port: number): stri
   if (!/^https?:$/.test(url.protocol))
     throw new ConfigError(`PUBLIC_URL takes http or https, not "${url.protocol}"`);
   if (url.pathname !== '/' || url.search !== '' || url.hash !== '' || url.username !== '') {
-    throw new ConfigError(`PUBLIC_URL takes no path, question or name, only the origin: "${text}"`);
+    // Not the text itself: it may hold a password.
+    throw new ConfigError(`PUBLIC_URL takes no path, query or user name, only the origin: "${url.origin}"`);
   }
   return url.origin;
 }
