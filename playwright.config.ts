@@ -6,6 +6,8 @@ export const DEMO_PASSWORD = 'a password for the tests';
 
 const WIDE_ONLY = '**/*.wide.spec.ts';
 const PHONE_ONLY = '**/*.phone.spec.ts';
+/** What has nothing to do with the look is seen once. */
+const ONCE = /@once/;
 
 const server = [
   `rm -rf ${DATA}`,
@@ -50,6 +52,7 @@ export default defineConfig({
     {
       name: 'phone',
       testIgnore: WIDE_ONLY,
+      grepInvert: ONCE,
       use: {
         viewport: { width: 390, height: 844 },
         isMobile: true,

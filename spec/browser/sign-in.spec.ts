@@ -11,7 +11,7 @@ test('asks who somebody is before it shows anything, and then goes where they wa
   await expect(page).toHaveURL(/\/devices$/);
 });
 
-test('stays signed in after a reload and is signed out for good', async ({ page }) => {
+test('stays signed in after a reload and is signed out for good', { tag: '@once' }, async ({ page }) => {
   await signIn(page);
   await page.reload();
   await expect(page.locator('lw-shell')).toBeVisible();
@@ -23,7 +23,7 @@ test('stays signed in after a reload and is signed out for good', async ({ page 
 
 test.describe('with a wrong password', () => {
   test.use({ allowed: [/status of 40[13]/] });
-  test('says so without telling which accounts exist', async ({ page }) => {
+  test('says so without telling which accounts exist', { tag: '@once' }, async ({ page }) => {
     const answers: string[] = [];
     for (const email of [PEOPLE.firmware, 'nobody@norrhavn.example']) {
       await page.goto('/sign-in');

@@ -7,7 +7,7 @@ import { KEY_GROUPS } from './keys';
   selector: 'lw-keys-sheet',
   template: `
     <h2 mat-dialog-title tabindex="-1">Keys</h2>
-    <mat-dialog-content>
+    <mat-dialog-content tabindex="0">
       @for (group of groups; track group.where) {
         <section>
           <h3>{{ group.where }}</h3>

@@ -49,7 +49,12 @@ export class Shell {
   protected async openFinder(): Promise<void> {
     if (this.dialog.openDialogs.length > 0) return;
     const { Finder } = await import('./finder');
-    this.dialog.open(Finder, { width: '560px', position: { top: '80px' }, autoFocus: 'first-tabbable' });
+    this.dialog.open(Finder, {
+      width: '560px',
+      position: { top: '80px' },
+      autoFocus: 'first-tabbable',
+      ariaLabel: 'Find',
+    });
   }
 
   protected async openKeys(): Promise<void> {

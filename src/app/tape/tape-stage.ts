@@ -202,7 +202,7 @@ export class TapeStage {
     let next: number;
     if (at >= 0) next = (at + direction + list.length) % list.length;
     else {
-      const focus = this.focusTicks();
+      const focus = this.edgeOrFocus(direction);
       const later = list.findIndex((index) => model.places[index].ticks > focus);
       const first = later < 0 ? list.length : later;
       next = (direction > 0 ? first : first - 1 + list.length) % list.length;
@@ -216,7 +216,7 @@ export class TapeStage {
     if (model === null) return;
     const starts = kind === 'packet' ? model.packetStarts : model.tape.characters.startTicks;
     const selection = this.chosen();
-    const focus = this.focusTicks();
+    const focus = this.edgeOrFocus(direction);
     const index =
       selection?.kind === kind
         ? selection.index + direction
@@ -288,6 +288,13 @@ export class TapeStage {
       if (isIn(at)) return at;
     }
     return (startTicks + endTicks) / 2;
+  }
+
+  /** With nothing in hand a walk begins at the edge of the window. */
+  private edgeOrFocus(direction: 1 | -1): number {
+    if (this.chosen() !== null || this.held() !== null) return this.focusTicks();
+    const { startTicks, endTicks } = this.frame();
+    return direction > 0 ? startTicks - 1 : endTicks + 1;
   }
 
   private keepInView(ticks: number): void {

@@ -27,6 +27,12 @@ import { VerdictGlyph } from './verdict-glyph';
         }}<span [class.visually-hidden]="!words()">{{ n.pass === 1 ? 'pass' : 'passes' }}</span></span
       >
     }
+    @if (!words() && n.notShown > 0) {
+      <span class="count faint"
+        ><lw-verdict-glyph kind="not-shown" />{{ n.notShown
+        }}<span class="visually-hidden">not shown</span></span
+      >
+    }
   `,
   styles: `
     :host {

@@ -38,10 +38,10 @@ export function sortFindings(model: TapeModel): FindingsByPlace {
   return { ofPacket, ofCharacter, ofReset };
 }
 
-const MOST = 3;
+const MOST = 2;
 const RANK = { violation: 0, inconclusive: 1, 'not-shown': 2, pass: 3 } as const;
 
-/** The codes of findings with their verdicts, the worst first, each code once. */
+/** The codes of findings with their verdicts, the worst first, each code once; passes only where there is nothing worse. */
 export function marksOf(model: TapeModel, findings: readonly number[] | undefined): readonly CellMark[] {
   if (findings === undefined) return [];
   const sorted = [...findings].sort(
@@ -50,6 +50,7 @@ export function marksOf(model: TapeModel, findings: readonly number[] | undefine
   const marks: CellMark[] = [];
   for (const index of sorted) {
     const { verdict, rule } = model.findings[index];
+    if (verdict === 'pass' && marks.some(({ kind }) => kind !== 'pass')) break;
     if (marks.length < MOST && !marks.some((mark) => mark.text === rule))
       marks.push({ kind: verdict, text: rule });
   }
