@@ -47,6 +47,7 @@ export default defineConfig({
     {
       name: 'dark',
       testIgnore: PHONE_ONLY,
+      grepInvert: ONCE,
       use: { viewport: { width: 1440, height: 900 }, colorScheme: 'dark' },
     },
     {

@@ -11,7 +11,10 @@ export default defineConfig({
       'src/app/tape/drawing/**/*.spec.ts',
     ],
     exclude: ['spec/browser/**', '**/node_modules/**'],
-    testTimeout: 30_000,
+    // Upper bounds for a machine that does other things too; nothing is measured by them.
+    testTimeout: 60_000,
+    hookTimeout: 60_000,
+    expect: { poll: { timeout: 30_000 } },
     pool: 'forks',
     maxWorkers: 2,
   },

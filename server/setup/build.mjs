@@ -4,31 +4,12 @@ import { existsSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'no
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { brotliCompressSync, constants, gzipSync } from 'node:zlib';
-import { build } from 'esbuild';
+import { bundleServer } from './bundle-server.mjs';
 
 const ROOT = fileURLToPath(new URL('../../', import.meta.url));
-/** One entry for each process or thread; side by side, so that a thread finds its file. */
-const ENTRIES = { main: 'server/main.ts', 'decode-worker': 'server/jobs/decode-worker.ts' };
 const PACKED = /\.(js|css|html|svg|json|txt|map)$/;
 /** Smaller files are not worth a second copy. */
 const LEAST_BYTES = 1024;
-
-async function bundleServer() {
-  rmSync(join(ROOT, 'dist/server'), { recursive: true, force: true });
-  await build({
-    absWorkingDir: ROOT,
-    entryPoints: ENTRIES,
-    outdir: 'dist/server',
-    bundle: true,
-    platform: 'node',
-    target: 'node20',
-    format: 'esm',
-    packages: 'external',
-    sourcemap: true,
-    tsconfig: 'server/tsconfig.json',
-    logLevel: 'warning',
-  });
-}
 
 function buildClient() {
   if (!existsSync(join(ROOT, 'angular.json'))) return;
@@ -55,5 +36,6 @@ function pack(folder) {
   }
 }
 
-await bundleServer();
+rmSync(join(ROOT, 'dist/server'), { recursive: true, force: true });
+await bundleServer('dist/server');
 buildClient();

@@ -63,7 +63,7 @@ async function askCheck(decodeId: number, rulebook: string): Promise<JobView> {
 }
 
 const running = (id: number) =>
-  expect.poll(async () => (await get<JobView>(`/jobs/${id}`)).state, { timeout: 20_000 }).toBe('running');
+  expect.poll(async () => (await get<JobView>(`/jobs/${id}`)).state).toBe('running');
 
 function products(): string[] {
   return readdirSync(join(workspace.dataDir, 'products'));

@@ -89,7 +89,7 @@ describe('the stream of events', () => {
     const asked = await workspace.ask(person, 'post', `/captures/${number}/decodes`).send({ map: {} });
     const { id } = asked.body as JobView;
     const told = () => reader.of('job').filter(({ job }) => job.id === id);
-    await expect.poll(() => told().at(-1)?.job.state, { timeout: 25_000 }).toBe('done');
+    await expect.poll(() => told().at(-1)?.job.state).toBe('done');
     const states = told().map(({ job }) => job.state);
     expect(states[0]).toBe('queued');
     expect(states.filter((state, i) => state !== states[i - 1])).toEqual(['queued', 'running', 'done']);
