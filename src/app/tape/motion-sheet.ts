@@ -1,10 +1,13 @@
 import { ChangeDetectionStrategy, Component, computed, ElementRef, inject, viewChild } from '@angular/core';
 import { hitMotion, layOutMotion, paintMotion } from './drawing/motion-sheet';
 import { hostSize } from './element-size';
-import { onFrame } from './on-frame';
+import { onRest } from './on-frame';
 import { prepareSurface } from './paint-surface';
 import { PaletteSource } from './palette-source';
 import { TapeStage } from './tape-stage';
+
+/** The whole path is long: it need not follow every frame of a moving tape. */
+const REST_MS = 120;
 
 /** The movement on paper. A point under the pointer lights its packet on the tape; a click selects it. */
 @Component({
@@ -53,7 +56,8 @@ export class MotionSheet {
   });
 
   constructor() {
-    onFrame(
+    onRest(
+      REST_MS,
       () => ({
         layout: this.layout(),
         palette: this.palette(),
@@ -65,7 +69,7 @@ export class MotionSheet {
       }),
       ({ layout, palette, view }) => {
         if (layout === null) return;
-        const surface = prepareSurface(this.canvas().nativeElement, layout.widthPx, layout.heightPx);
+        const surface = prepareSurface(this.canvas().nativeElement, layout.widthPx, layout.heightPx, true);
         if (surface !== null) paintMotion(surface.ctx, layout, view, palette);
       },
     );

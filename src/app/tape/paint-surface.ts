@@ -5,11 +5,16 @@ export interface PaintSurface {
   readonly heightPx: number;
 }
 
-/** Fits the canvas to a size in CSS px and returns its context, scaled. null where the browser gives none (or nothing fits). */
+/**
+ * Fits the canvas to a size in CSS px and returns its context, scaled.
+ * @param isOpaque every pixel is painted each time: cheaper to put on the screen; must stay the same for a canvas
+ * @returns null where the browser gives none, or there is no room
+ */
 export function prepareSurface(
   canvas: HTMLCanvasElement,
   widthPx: number,
   heightPx: number,
+  isOpaque = false,
 ): PaintSurface | null {
   const ratio = window.devicePixelRatio || 1;
   const [width, height] = [Math.round(widthPx * ratio), Math.round(heightPx * ratio)];
@@ -18,7 +23,7 @@ export function prepareSurface(
     canvas.height = height;
   }
   if (width === 0 || height === 0) return null;
-  const ctx = canvas.getContext('2d');
+  const ctx = canvas.getContext('2d', { alpha: !isOpaque });
   if (ctx === null) return null;
   ctx.setTransform(ratio, 0, 0, ratio, 0, 0);
   return { ctx, widthPx, heightPx };

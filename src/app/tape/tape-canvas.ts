@@ -15,7 +15,7 @@ import { describeTape } from './drawing/describe';
 import type { TapeHit } from './drawing/hit-test';
 import { hitTest, snapToEdge } from './drawing/hit-test';
 import { lanesHeight, layOutLanes } from './drawing/lanes';
-import { paintData, paintOverlay, paintPaper } from './drawing/paint-tape';
+import { paintOverlay, paintTape } from './drawing/paint-tape';
 import type { TapeView } from './drawing/view';
 import { paperWidth, timeScaleOf } from './drawing/view';
 import { hostSize } from './element-size';
@@ -25,13 +25,12 @@ import { PaletteSource } from './palette-source';
 import { TapeStage } from './tape-stage';
 import { TapePointer } from './tape-pointer';
 
-/** The tape itself: paper, data and overlay on a canvas each, with pointer and touch. Keys are the page's. */
+/** The tape itself: paper with data, and an overlay for what follows the pointer, on a canvas each, with pointer and touch. Keys are the page's. */
 @Component({
   selector: 'lw-tape-canvas',
   template: `
-    <canvas #paper></canvas>
-    <canvas #data></canvas>
-    <canvas #overlay></canvas>
+    <canvas #sheet></canvas>
+    <canvas #overlay [hidden]="isBare()"></canvas>
   `,
   styleUrl: './tape-canvas.scss',
   providers: [TapePointer],
@@ -61,8 +60,7 @@ export class TapeCanvas {
   /** Something was activated that leads elsewhere. */
   readonly opened = output<TapeHit>();
 
-  private readonly paperLayer = viewChild.required<ElementRef<HTMLCanvasElement>>('paper');
-  private readonly dataLayer = viewChild.required<ElementRef<HTMLCanvasElement>>('data');
+  private readonly sheetLayer = viewChild.required<ElementRef<HTMLCanvasElement>>('sheet');
   private readonly overlayLayer = viewChild.required<ElementRef<HTMLCanvasElement>>('overlay');
 
   private readonly hover = signal<{ xPx: number; yPx: number } | null>(null);
@@ -86,6 +84,11 @@ export class TapeCanvas {
     const model = this.stage.model();
     return model === null ? [] : layOutLanes(model, this.still());
   });
+  /** Nothing follows the pointer: a canvas less to put on the screen. */
+  protected readonly isBare = computed(() => {
+    const { a, b } = this.stage.dividers();
+    return a === null && b === null && this.hover() === null && this.drag() === null;
+  });
   protected readonly heightPx = computed(() => lanesHeight(this.lanes()));
   protected readonly label = computed(() => {
     const model = this.stage.model();
@@ -103,10 +106,8 @@ export class TapeCanvas {
       }),
       ({ model, view, lanes, palette }) => {
         if (model === null) return;
-        const paper = prepareSurface(this.paperLayer().nativeElement, view.widthPx, view.heightPx);
-        const data = prepareSurface(this.dataLayer().nativeElement, view.widthPx, view.heightPx);
-        if (paper !== null) paintPaper(paper.ctx, model, view, lanes, palette);
-        if (data !== null) paintData(data.ctx, model, view, lanes, palette);
+        const sheet = prepareSurface(this.sheetLayer().nativeElement, view.widthPx, view.heightPx, true);
+        if (sheet !== null) paintTape(sheet.ctx, model, view, lanes, palette);
       },
     );
     onFrame(

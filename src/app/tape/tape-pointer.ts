@@ -31,6 +31,9 @@ const SLOP_PX = 4;
 const NOTCH = 1.2;
 const NOTCH_PX = 100;
 
+/** The place of the canvas is asked for this seldom while events come thick: asking makes the browser lay out the page at once. */
+const BOX_MS = 250;
+
 /** Wheel zooms at the pointer, drag pans, drag in the ruler selects a window, two fingers pinch, dividers snap to edges. */
 @Injectable()
 export class TapePointer {
@@ -38,6 +41,8 @@ export class TapePointer {
   private readonly stopping = new AbortController();
   private readonly fingers = new Map<number, Point>();
   private doing: Doing | null = null;
+  private box = { left: 0, top: 0 };
+  private boxUntil = 0;
   private element!: HTMLElement;
   private target!: PointerTarget;
 
@@ -209,7 +214,10 @@ export class TapePointer {
   }
 
   private pointOf(event: MouseEvent): Point {
-    const box = this.element.getBoundingClientRect();
-    return { xPx: event.clientX - box.left, yPx: event.clientY - box.top };
+    if (performance.now() > this.boxUntil) {
+      this.box = this.element.getBoundingClientRect();
+      this.boxUntil = performance.now() + BOX_MS;
+    }
+    return { xPx: event.clientX - this.box.left, yPx: event.clientY - this.box.top };
   }
 }

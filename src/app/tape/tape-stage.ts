@@ -43,6 +43,8 @@ export class TapeStage {
   private readonly paper = signal(900);
   private readonly hidden = signal<readonly LaneId[]>([]);
   private animation = 0;
+  /** Where a move under way leads; decisions must not be made from the middle of it. */
+  private goal: TapeWindow | null = null;
 
   readonly model = this.shown.asReadonly();
   readonly window = this.frame.asReadonly();
@@ -100,6 +102,7 @@ export class TapeStage {
     const model = this.shown();
     if (model === null) return;
     cancelAnimationFrame(this.animation);
+    this.goal = null;
     this.frame.set(clampWindow(window, windowLimits(model.tape, this.paper())));
   }
 
@@ -113,12 +116,14 @@ export class TapeStage {
       return;
     }
     cancelAnimationFrame(this.animation);
+    this.goal = to;
     const from = this.frame();
     const startedAt = performance.now();
     const step = (now: number): void => {
       const share = Math.min(1, Math.max(0, (now - startedAt) / MOVE_MS));
       this.frame.set(share === 1 ? to : between(from, to, eased(share)));
       if (share < 1) this.animation = requestAnimationFrame(step);
+      else this.goal = null;
     };
     this.animation = requestAnimationFrame(step);
   }
@@ -126,7 +131,12 @@ export class TapeStage {
   zoom(factor: number, focusTicks: number, isSmooth = false): void {
     const model = this.shown();
     if (model === null) return;
-    const window = zoomAt(this.frame(), factor, focusTicks, windowLimits(model.tape, this.paper()));
+    const window = zoomAt(
+      isSmooth ? this.destination() : this.frame(),
+      factor,
+      focusTicks,
+      windowLimits(model.tape, this.paper()),
+    );
     if (isSmooth) this.moveTo(window);
     else this.set(window);
   }
@@ -138,7 +148,7 @@ export class TapeStage {
 
   pan(share: number): void {
     const model = this.shown();
-    if (model !== null) this.moveTo(panBy(this.frame(), share, windowLimits(model.tape, this.paper())));
+    if (model !== null) this.moveTo(panBy(this.destination(), share, windowLimits(model.tape, this.paper())));
   }
 
   showAll(): void {
@@ -178,7 +188,7 @@ export class TapeStage {
     this.chosen.set(thing);
     this.isStacked.set(false);
     const { startTicks, endTicks } = spanOf(model, thing);
-    const { startTicks: from, endTicks: to } = this.frame();
+    const { startTicks: from, endTicks: to } = this.destination();
     const length = to - from;
     const isLong = endTicks - startTicks > length;
     if (isLong) this.fit(thing);
@@ -271,10 +281,15 @@ export class TapeStage {
     this.hidden.set(lanes);
   }
 
+  /** The window in which a move under way will end. */
+  private destination(): TapeWindow {
+    return this.goal ?? this.frame();
+  }
+
   /** Where keys act: the selection if it is in view, the divider in hand, else the middle. */
   focusTicks(): number {
     const model = this.shown();
-    const { startTicks, endTicks } = this.frame();
+    const { startTicks, endTicks } = this.destination();
     const isIn = (ticks: number): boolean => ticks >= startTicks && ticks <= endTicks;
     const divider = this.held();
     const blade = divider === null ? null : this.blades()[divider];
@@ -293,12 +308,12 @@ export class TapeStage {
   /** With nothing in hand a walk begins at the edge of the window. */
   private edgeOrFocus(direction: 1 | -1): number {
     if (this.chosen() !== null || this.held() !== null) return this.focusTicks();
-    const { startTicks, endTicks } = this.frame();
+    const { startTicks, endTicks } = this.destination();
     return direction > 0 ? startTicks - 1 : endTicks + 1;
   }
 
   private keepInView(ticks: number): void {
-    const { startTicks, endTicks } = this.frame();
+    const { startTicks, endTicks } = this.destination();
     if (ticks >= startTicks && ticks <= endTicks) return;
     const half = (endTicks - startTicks) / 2;
     this.moveTo({ startTicks: ticks - half, endTicks: ticks + half });

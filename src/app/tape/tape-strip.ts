@@ -66,7 +66,7 @@ export class TapeStrip {
     onFrame(
       () => ({ model: this.stage.model(), view: this.view(), palette: this.palette() }),
       ({ model, view, palette }) => {
-        const surface = prepareSurface(this.canvas().nativeElement, view.widthPx, view.heightPx);
+        const surface = prepareSurface(this.canvas().nativeElement, view.widthPx, view.heightPx, true);
         if (surface !== null && model !== null) paintStrip(surface.ctx, model, view, palette);
       },
     );

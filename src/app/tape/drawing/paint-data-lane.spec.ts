@@ -30,7 +30,7 @@ describe('the ribbon', () => {
     const x = scale.xOf(line?.ticks[first] ?? 0);
     const width = scale.xOf(line?.ticks[first + 1] ?? 0) - x;
     const piece = data
-      .of('rect')
+      .of('fillRect')
       .find((call) => Math.abs((call.args[0] as number) - x) < 1e-6 && call.args[1] === rows.ribbonTop);
     expect(piece?.args[2]).toBeCloseTo(width, 6);
     expect(piece?.args[3]).toBe(18);
@@ -93,7 +93,7 @@ describe('cells', () => {
     };
     const stopX = timeScaleOf(view).xOf(broken.tape.characters.startTicks[c] + 8 * broken.nominalBitTicks);
     const filled = paintAll(broken, view)
-      .data.of('rect')
+      .data.of('fillRect')
       .filter((call) => Math.abs((call.args[0] as number) - stopX) < 0.01 && call.args[3] === 24);
     expect(filled.length).toBeGreaterThan(0);
   });
@@ -109,7 +109,12 @@ describe('density', () => {
   it('stands on a base line and is as tall as the share of the line in use', () => {
     const view = viewOf(model, 0, 12);
     const { data } = paintAll(model, view);
-    const columns = data.of('rect').filter((call) => call.fillStyle === 'ribbon');
+    const bottomOf = (call: { args: readonly unknown[] }): number =>
+      (call.args[1] as number) + (call.args[3] as number);
+    const ribbons = data.of('fillRect').filter((call) => call.fillStyle === 'ribbon');
+    const tallest = ribbons.reduce((a, b) => ((b.args[3] as number) > (a.args[3] as number) ? b : a));
+    // The control lines are ribbons too; the density stands on one base line.
+    const columns = ribbons.filter((call) => Math.abs(bottomOf(call) - bottomOf(tallest)) < 0.01);
     const heights = columns.map((call) => call.args[3] as number);
     expect(Math.max(...heights)).toBeLessThanOrEqual(36.01);
     expect(Math.max(...heights)).toBeGreaterThan(25);
@@ -131,7 +136,12 @@ describe('the raw ribbon', () => {
     });
     const window = windowAtScale(long.tape, 948, 0.15, 5 / long.tape.tickS);
     const { data } = paintAll(long, { ...viewOf(long, 0, 1), window });
-    const shades = new Set(data.of('fill').map((call) => call.alpha));
+    const shades = new Set(
+      data
+        .of('fillRect')
+        .filter((call) => call.fillStyle === 'ink')
+        .map((call) => call.alpha),
+    );
     expect(shades.size).toBeGreaterThan(2);
   });
 });

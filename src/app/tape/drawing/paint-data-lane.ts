@@ -65,7 +65,6 @@ function paintDensity(sheet: Sheet, lane: LaneLayout): void {
   const last = Math.ceil(scale.ticksAt(rightPx) / columnTicks);
   let before = usedUpTo(characters, model.usedBefore, first * columnTicks);
   ctx.fillStyle = palette.ribbon;
-  ctx.beginPath();
   for (let column = first; column < last; column++) {
     const after = usedUpTo(characters, model.usedBefore, (column + 1) * columnTicks);
     const height = ((after - before) / columnTicks) * fullPx;
@@ -73,8 +72,7 @@ function paintDensity(sheet: Sheet, lane: LaneLayout): void {
     if (height <= 0) continue;
     const x0 = pen.snap(scale.xOf(column * columnTicks));
     const x1 = pen.snap(scale.xOf((column + 1) * columnTicks));
-    ctx.rect(x0, baseY - Math.max(1, height), x1 - x0, Math.max(1, height));
+    ctx.fillRect(x0, baseY - Math.max(1, height), x1 - x0, Math.max(1, height));
   }
-  ctx.fill();
   pen.across(leftPx, rightPx, baseY + 0.5, palette.ribbon);
 }

@@ -50,19 +50,18 @@ function paintPieces(
 ): void {
   const { ctx, palette, scale } = sheet;
   ctx.fillStyle = palette.ink;
-  ctx.beginPath();
   let level = first === 0 ? line.initialLevel : line.levels[first - 1];
   let from = start;
   for (let i = first; i <= last; i++) {
     const to = i < last ? line.ticks[i] : end;
     if (level === SPACE) {
       const x = scale.xOf(from);
-      ctx.rect(x, topY, Math.max(0.75, scale.xOf(to) - x), heightPx);
+      // One by one: rectangles are cheaper than a path of them.
+      ctx.fillRect(x, topY, Math.max(0.75, scale.xOf(to) - x), heightPx);
     }
     from = to;
     if (i < last) level = line.levels[i];
   }
-  ctx.fill();
 }
 
 function paintColumns(
@@ -89,9 +88,7 @@ function paintColumns(
   columns.forEach((xs, shade) => {
     if (xs.length === 0) return;
     ctx.globalAlpha = 0.2 + (0.8 * shade) / SHADES;
-    ctx.beginPath();
-    for (const x of xs) ctx.rect(x, topY, 1, heightPx);
-    ctx.fill();
+    for (const x of xs) ctx.fillRect(x, topY, 1, heightPx);
   });
   ctx.restore();
 }

@@ -17,6 +17,7 @@ import { paintStems } from './paint-stems';
 import { paintSpanBar, paintWash } from './paint-wash';
 import type { Palette } from './palette';
 import { makeSheet, onPaper } from './sheet';
+import type { Sheet } from './sheet';
 import type { TapeModel } from './tape-model';
 import type { TapeView } from './view';
 
@@ -52,8 +53,23 @@ export function paintData(
   lanes: readonly LaneLayout[],
   palette: Palette,
 ): void {
-  const sheet = makeSheet(ctx, model, view, lanes, palette);
   ctx.clearRect(0, 0, view.widthPx, view.heightPx);
+  paintDataOver(makeSheet(ctx, model, view, lanes, palette));
+}
+
+/** Paper and data on one canvas: both change with the window, and a canvas less is a layer less to put together. */
+export function paintTape(
+  ctx: CanvasRenderingContext2D,
+  model: TapeModel,
+  view: TapeView,
+  lanes: readonly LaneLayout[],
+  palette: Palette,
+): void {
+  paintPaper(ctx, model, view, lanes, palette);
+  paintDataOver(makeSheet(ctx, model, view, lanes, palette));
+}
+
+function paintDataOver(sheet: Sheet): void {
   onPaper(sheet, () => {
     paintWash(sheet);
     paintControlLanes(sheet);

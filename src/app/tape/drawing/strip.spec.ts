@@ -45,7 +45,7 @@ describe('the strip', () => {
   it('draws density in the ribbon colour and the violation as a diamond', () => {
     const recording = new RecordingContext();
     paintStrip(recording.ctx, model, viewOf(0, end), NAMED_PALETTE);
-    const bars = recording.of('rect').filter((call) => call.fillStyle === 'ribbon');
+    const bars = recording.of('fillRect').filter((call) => call.fillStyle === 'ribbon');
     expect(bars.length).toBeGreaterThan(40);
     expect(bars.every((call) => (call.args[3] as number) >= 1 && (call.args[3] as number) <= 18.1)).toBe(
       true,

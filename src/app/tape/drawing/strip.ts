@@ -55,17 +55,15 @@ function paintDensity(pen: Pen, model: TapeModel, view: StripView, palette: Pale
   const scale = wholeScale(model, view);
   const columnTicks = COLUMN_PX.pitch * scale.ticksPerPx;
   let before = 0;
+  ctx.save();
+  ctx.globalAlpha = 0.75;
   ctx.fillStyle = palette.ribbon;
-  ctx.beginPath();
   for (let x = view.gutterPx, end = columnTicks; x < view.widthPx; x += COLUMN_PX.pitch, end += columnTicks) {
     const after = usedUpTo(characters, model.usedBefore, end);
     const height = ((after - before) / columnTicks) * FULL_PX;
     before = after;
-    if (height > 0) ctx.rect(x, BASE_PX - Math.max(1, height), COLUMN_PX.bar, Math.max(1, height));
+    if (height > 0) ctx.fillRect(x, BASE_PX - Math.max(1, height), COLUMN_PX.bar, Math.max(1, height));
   }
-  ctx.save();
-  ctx.globalAlpha = 0.75;
-  ctx.fill();
   ctx.restore();
   pen.across(view.gutterPx, view.widthPx, BASE_PX + 0.5, palette.ribbon);
 }

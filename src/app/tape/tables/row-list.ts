@@ -12,10 +12,13 @@ import {
   viewChild,
 } from '@angular/core';
 import { VerdictGlyph } from '../../ui/verdict-glyph';
+import { onRest } from '../on-frame';
 import { TapeStage } from '../tape-stage';
 import type { TableRow, TapeTable } from './table-row';
 
 const ROW_PX = 24;
+/** Rows follow a moving tape in steps: making rows for every frame would make the tape stutter. */
+const REST_MS = 120;
 const TALL_ROW_PX = 46;
 
 /** A table over a column of rows, of which only those in sight exist. Roving focus; what is selected here is selected on the tape. */
@@ -56,13 +59,20 @@ export class RowList {
       this.focused.set(index);
       if (!this.isInSight(index)) viewport.scrollToIndex(Math.max(0, index - 2));
     });
-    effect(() => {
-      const viewport = this.viewport();
-      const { startTicks } = this.stage.window();
-      if (!this.follows() || viewport === undefined || this.selected() >= 0) return;
-      const index = this.table().indexAt(startTicks);
-      if (index >= 0) viewport.scrollToIndex(index);
-    });
+    onRest(
+      REST_MS,
+      () => ({
+        viewport: this.viewport(),
+        startTicks: this.stage.window().startTicks,
+        table: this.table(),
+        isFree: this.follows() && this.selected() < 0,
+      }),
+      ({ viewport, startTicks, table, isFree }) => {
+        if (!isFree || viewport === undefined) return;
+        const index = table.indexAt(startTicks);
+        if (index >= 0) viewport.scrollToIndex(index);
+      },
+    );
   }
 
   protected isText(cell: NonNullable<TableRow['cells'][number]>): cell is string {
