@@ -36,6 +36,7 @@ export const KEY_GROUPS: readonly KeyGroup[] = [
       ['N P', 'next, previous finding'],
       [', .', 'previous, next packet'],
       ['[ ]', 'previous, next character'],
+      ['I', 'character under the glass'],
       ['G', 'find a time, value, rule or movement'],
       ['A B', 'set a divider; then ← → moves it edge to edge, Alt one sample'],
       ['X', 'swap the dividers'],

@@ -72,6 +72,8 @@ export class TapeKeys {
         return () => stage.stepThing('character', -1);
       case ']':
         return () => stage.stepThing('character', 1);
+      case 'i':
+        return () => this.inspect();
       case 'g':
       case '/':
         return () => target.openFind();
@@ -114,6 +116,17 @@ export class TapeKeys {
     this.stage.isStacked.set(false);
     this.stage.select({ kind: 'reset', index });
     this.stage.showFrom(HANDSHAKE_PX, resets[index].onTicks);
+  }
+
+  /** The first character of what is selected, or the next one, under the glass. */
+  private inspect(): void {
+    const { stage } = this;
+    const model = stage.model();
+    const selection = stage.selection();
+    if (model === null || selection?.kind === 'character') return;
+    if (selection?.kind === 'packet')
+      stage.reveal({ kind: 'character', index: model.tape.packets.firstCharacter[selection.index] });
+    else stage.stepThing('character', 1);
   }
 
   private toBegin(): void {

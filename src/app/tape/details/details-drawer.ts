@@ -7,6 +7,7 @@ import { VerdictGlyph } from '../../ui/verdict-glyph';
 import { VERDICT_WORDS } from '../drawing/finding-words';
 import { TapeStage } from '../tape-stage';
 import { positionOf } from '../tables/positions';
+import { CharacterInspector } from './character-inspector';
 import { characterFacts, packetFacts, pnpFacts, resetFacts } from './facts';
 import { Gauge } from './gauge';
 import { measuredText, uncertaintyText, unitText } from './measured';
@@ -26,7 +27,7 @@ const MOST_PLACES = 40;
   selector: 'lw-details-drawer',
   templateUrl: './details-drawer.html',
   styleUrl: './details-drawer.scss',
-  imports: [Gauge, Icon, VerdictGlyph],
+  imports: [CharacterInspector, Gauge, Icon, VerdictGlyph],
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class DetailsDrawer {
