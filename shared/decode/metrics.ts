@@ -2,7 +2,7 @@ import { summariseDistortion } from '../characters/edge-distortion';
 import { bitsAfterStart, elementsPerCharacter } from '../characters/framing';
 import { findMotionRuns } from '../packets/motion-runs';
 import { BUTTON_NAMES } from '../packets/packet-table';
-import { median } from '../statistics/order-statistics';
+import { median } from '../statistics/percentile';
 import { secondsPerTick, ticksPerSecond } from '../time/time-base';
 import type { Decoded } from './decoded';
 

@@ -1,4 +1,4 @@
-import { occurrenceUpperBound } from '../statistics/proportions';
+import { occurrenceUpperBound } from '../statistics/success-run';
 import type { OverallVerdict, RuleResult, Verdict } from './finding';
 import type { Decision } from './rulebook';
 

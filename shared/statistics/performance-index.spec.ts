@@ -17,4 +17,18 @@ describe('performanceIndex', () => {
     const values = [9, 11, 9, 11, 10, 10, 9, 11, 9, 11];
     expect(performanceIndex(values, 13, 0.5)!.value).toBeGreaterThan(performanceIndex(values, 13, 0)!.value);
   });
+
+  it('prints the interval of its standard error', () => {
+    const values = [9, 11, 9, 11, 10, 10, 9, 11, 9, 11];
+    const { value, half } = performanceIndex(values, 13, 0)!;
+    // Source: √(1/(9n) + P²/(2(n − 1))), rules.md 1; Bissell 1990, from memory.
+    expect(half).toBeCloseTo(1.959964 * Math.sqrt(1 / 90 + value ** 2 / 18), 5);
+  });
+
+  it('warns where the values do not look normal', () => {
+    const two = Array.from({ length: 40 }, (_, i) => (i % 2 === 0 ? 10 : 12));
+    expect(performanceIndex(two, 14, 0)!.isNormalityDoubtful).toBe(true);
+    const even = Array.from({ length: 40 }, (_, i) => 11 + 0.8 * Math.tan((i - 19.5) / 17));
+    expect(performanceIndex(even, 16, 0)!.isNormalityDoubtful).toBe(false);
+  });
 });

@@ -6,7 +6,8 @@ import { CaptureReader } from '#shared/capture/read-capture';
 import { decode } from '#shared/decode/decode';
 import { BASELINE } from '#shared/rules/baseline';
 import { check } from '#shared/rules/check';
-import { occurrenceUpperBound, successRun, wilsonInterval } from '#shared/statistics/proportions';
+import { occurrenceUpperBound, successRun } from '#shared/statistics/success-run';
+import { wilsonInterval } from '#shared/statistics/wilson';
 
 const FORMATS = {
   '7N1': { dataBits: 7, parity: 'none', stopBits: 1 },
