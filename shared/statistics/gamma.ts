@@ -23,6 +23,11 @@ export function lowerGammaShare(a: number, x: number): number {
   return x < a + 1 ? front * series(a, x) : 1 - front * fraction(a, x);
 }
 
+/** ln(1 − P(a, x)) for x ≥ a + 1: keeps its digits far out in the tail, where 1 − P has none left. */
+export function logUpperGammaShare(a: number, x: number): number {
+  return a * Math.log(x) - x - logGamma(a) + Math.log(fraction(a, x));
+}
+
 function series(a: number, x: number): number {
   let term = 1 / a;
   let sum = term;

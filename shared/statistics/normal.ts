@@ -1,4 +1,4 @@
-import { lowerGammaShare } from './gamma';
+import { logUpperGammaShare, lowerGammaShare } from './gamma';
 
 /** Quantile of the standard normal distribution for a two-sided 95 % interval. */
 export const Z_95 = 1.959963984540054;
@@ -9,12 +9,10 @@ export function normalShare(z: number): number {
   return z >= 0 ? 0.5 + share / 2 : 0.5 - share / 2;
 }
 
-/** log(1 − share below `z`), without the loss of digits far out in the tail. */
+/** ln(1 − share below `z`), without the loss of digits far out in the tail. */
 export function logNormalTail(z: number): number {
-  if (z < 5) return Math.log(normalShare(-z));
-  // Asymptotic series of Mills' ratio; its error is below the next term, 15/z⁶ of a thousandth at z = 5.
-  const z2 = z * z;
-  return -z2 / 2 - Math.log(z * Math.sqrt(2 * Math.PI)) + Math.log1p(-1 / z2 + 3 / z2 ** 2 - 15 / z2 ** 3);
+  if (z < 2) return Math.log(normalShare(-z));
+  return logUpperGammaShare(0.5, (z * z) / 2) - Math.LN2;
 }
 
 /** The value below which the share `p` of the standard normal distribution lies; 0 < p < 1. By bisection of `normalShare`. */
