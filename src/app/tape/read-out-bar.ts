@@ -35,7 +35,8 @@ export class ReadOutBar {
   protected readonly keys = inject(TapeKeys);
 
   readonly isPhone = input(false);
-  readonly linkWanted = output();
+  /** The person wants to say what happened between the dividers. */
+  readonly spanStated = output();
 
   private readonly field = viewChild<ElementRef<HTMLInputElement>>('finder');
   protected readonly isFinding = signal(false);

@@ -11,9 +11,10 @@ import {
 } from '@angular/core';
 import { takeUntilDestroyed, toObservable } from '@angular/core/rxjs-interop';
 import { MatButton } from '@angular/material/button';
+import { MatDialog } from '@angular/material/dialog';
 import { MatMenuModule } from '@angular/material/menu';
 import { Router, RouterLink } from '@angular/router';
-import { debounceTime } from 'rxjs';
+import { debounceTime, filter, switchMap } from 'rxjs';
 import { PreferenceStore } from '../account/preference-store';
 import { ApiClient } from '../api/api-client';
 import { Downloads } from '../api/downloads';
@@ -28,14 +29,18 @@ import { LongDate, ShortDate } from '../ui/short-date';
 import { TitleBlock } from '../ui/title-block';
 import { TitleCell } from '../ui/title-cell';
 import { VerdictCountsView } from '../ui/verdict-counts';
+import type { LineMapInput } from '../captures/line-map/line-map-draft';
 import { ChecksPanel } from './checks-panel';
 import { DetailsDrawer } from './details/details-drawer';
 import { hostSize } from './element-size';
+import { secondsAt } from './drawing/time-scale';
 import { Legend } from './legend';
 import { MotionSheet } from './motion-sheet';
 import { PaletteSource } from './palette-source';
 import { ReadOutBar } from './read-out-bar';
 import { ResetStack } from './reset-stack';
+import type { SpanToState } from './state-span-dialog';
+import { StateSpanDialog } from './state-span-dialog';
 import { characterTable } from './tables/character-table';
 import { sortFindings } from './tables/findings-by-place';
 import type { FindingOrder } from './tables/finding-table';
@@ -49,6 +54,7 @@ import type { TableRow, TapeTable } from './tables/table-row';
 import { fromAddress, toAddress } from './tape-address';
 import { TapeCanvas } from './tape-canvas';
 import { TapeKeys } from './tape-keys';
+import type { LoadedTape } from './tape-source';
 import { TapeSource } from './tape-source';
 import { TapeStage } from './tape-stage';
 import { TapeStrip } from './tape-strip';
@@ -100,6 +106,7 @@ export class TapePage {
   private readonly preferences = inject(PreferenceStore);
   private readonly hostSize = hostSize();
   private readonly keys = inject(TapeKeys);
+  private readonly dialog = inject(MatDialog);
   protected readonly source = inject(TapeSource);
   protected readonly stage = inject(TapeStage);
   protected readonly screen = inject(ScreenWatch).size;
@@ -282,6 +289,40 @@ export class TapePage {
   protected showCheck(check: number): void {
     this.tab.set('Checks');
     void this.router.navigate([], { queryParams: { check }, queryParamsHandling: 'merge' });
+  }
+
+  /** What happened between the dividers goes into a new decode. */
+  protected stateSpan({ model, decode, check }: LoadedTape): void {
+    const { a, b } = this.stage.dividers();
+    if (a === null || b === null || a === b) return;
+    const data: SpanToState = {
+      startS: secondsAt(model.tape, Math.min(a, b)),
+      endS: secondsAt(model.tape, Math.max(a, b)),
+      map: decode.map,
+    };
+    this.dialog
+      .open<StateSpanDialog, SpanToState, LineMapInput>(StateSpanDialog, { data, width: '440px' })
+      .afterClosed()
+      .pipe(
+        filter((map) => map !== undefined),
+        switchMap((map) =>
+          this.api.ask('POST /captures/:number/decodes', {
+            params: { number: this.number() },
+            body: { map, options: decode.options, rulebook: check?.rulebook.key },
+          }),
+        ),
+      )
+      .subscribe({
+        next: () => {
+          this.notices.say('Being decoded again with what you said');
+          // The latest is shown once it is there.
+          void this.router.navigate([], {
+            queryParams: { decode: null, check: null },
+            queryParamsHandling: 'merge',
+          });
+        },
+        error: (error: unknown) => this.notices.fail(toProblem(error).detail),
+      });
   }
 
   protected cancel(jobId: number): void {

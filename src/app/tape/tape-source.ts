@@ -13,6 +13,7 @@ import { ApiClient } from '../api/api-client';
 import { EventStream } from '../api/event-stream';
 import type { Problem } from '../api/problem';
 import { toProblem } from '../api/problem';
+import { statedSpans } from './drawing/stated-spans';
 import type { TapeModel } from './drawing/tape-model';
 import { buildTapeModel } from './drawing/tape-model';
 
@@ -125,7 +126,7 @@ export class TapeSource {
               decodes,
               decode: chosen,
               check: checked,
-              model: toModel(tape, checked),
+              model: toModel(tape, checked, chosen),
             };
             return { kind: 'ready', loaded };
           }),
@@ -148,12 +149,14 @@ export class TapeSource {
 
 const NOT_THERE = { type: 'urn:linewitness:problem:not-found', status: 404, code: 'not-found' } as const;
 
-function toModel(tape: Tape, check: CheckView | null): TapeModel {
+function toModel(tape: Tape, check: CheckView | null, decode: DecodeView): TapeModel {
   const limitOf = (id: string): number | null => check?.rules.find((rule) => rule.id === id)?.limit ?? null;
   const replyLimitMs = limitOf('HSK-1');
-  return buildTapeModel(tape, check?.findings ?? [], {
+  const limits = {
     replyLimitS: replyLimitMs === null ? null : replyLimitMs / 1e3,
     lineUseLimit: limitOf('RPT-1'),
     distortionLimit: limitOf('FRM-8'),
-  });
+    grossDistortionLimit: limitOf('FRM-2'),
+  };
+  return buildTapeModel(tape, check?.findings ?? [], limits, statedSpans(tape, decode.map));
 }

@@ -28,7 +28,7 @@ import { VerdictGlyph } from './verdict-glyph';
       >
     }
     @if (!words() && n.notShown > 0) {
-      <span class="count faint"
+      <span class="count quiet"
         ><lw-verdict-glyph kind="not-shown" />{{ n.notShown
         }}<span class="visually-hidden">not shown</span></span
       >

@@ -13,6 +13,7 @@ import { paintNotes } from './paint-notes';
 import { paintPacketFlags, paintPacketGround } from './paint-packets-lane';
 import { paintReplyLane } from './paint-reply-lane';
 import { paintRuler } from './paint-ruler';
+import { paintStatedSpans } from './paint-stated-spans';
 import { paintStems } from './paint-stems';
 import { paintSpanBar, paintWash } from './paint-wash';
 import type { Palette } from './palette';
@@ -72,6 +73,7 @@ export function paintTape(
 function paintDataOver(sheet: Sheet): void {
   onPaper(sheet, () => {
     paintWash(sheet);
+    paintStatedSpans(sheet);
     paintControlLanes(sheet);
     paintDataLane(sheet);
     paintEdgesLane(sheet);

@@ -14,6 +14,7 @@ import type { MotionSums } from './motion-sums';
 import { sumSpace, sumUsed } from './prefix-sums';
 import { findReplies } from './replies';
 import type { Reply } from './replies';
+import type { StatedSpan } from './stated-spans';
 import { measuredBitTicks, nominalBitTicks } from './time-scale';
 
 /** Limits drawn on the tape, of the rulebook the tape is checked against. null where it has none. */
@@ -53,6 +54,8 @@ export interface TapeModel {
   readonly lowUse: readonly Span[];
   readonly held: readonly HeldButton[];
   readonly replies: readonly Reply[];
+  /** What a person states about stretches of the tape. */
+  readonly stated: readonly StatedSpan[];
   /** Where each finding stands. */
   readonly places: readonly FindingPlace[];
   /** Indexes of the findings in order of their places, and the ticks of those places. */
@@ -61,7 +64,12 @@ export interface TapeModel {
 }
 
 /** Builds the model: once for each tape with its findings. Takes time in proportion to edges and characters. */
-export function buildTapeModel(tape: Tape, findings: readonly FindingView[], limits: TapeLimits): TapeModel {
+export function buildTapeModel(
+  tape: Tape,
+  findings: readonly FindingView[],
+  limits: TapeLimits,
+  stated: readonly StatedSpan[] = [],
+): TapeModel {
   const lines: Partial<Record<LineRole, TapeLine>> = {};
   for (const line of tape.lines) lines[line.role] = line;
   const bitTicks = measuredBitTicks(tape);
@@ -101,6 +109,7 @@ export function buildTapeModel(tape: Tape, findings: readonly FindingView[], lim
     lowUse: findings.filter((finding) => finding.rule === 'RPT-1' && finding.verdict === 'violation'),
     held: findHeldButtons(tape.packets, packetEnds, tape.endTicks),
     replies: findReplies(tape, findings),
+    stated,
     places,
     findingOrder,
     findingTicks: Float64Array.from(findingOrder, (index) => places[index].ticks),
