@@ -30,6 +30,14 @@ export interface ComposedLine {
   readonly role: LineRole;
   readonly polarity: Polarity;
   readonly changes: readonly (readonly [number, number])[];
+  /** Stretches in which a line recorded in volts is lower, in order of their begin. */
+  readonly sags: readonly Sag[];
+}
+
+export interface Sag {
+  readonly from: number;
+  readonly to: number;
+  readonly volts: number;
 }
 
 export interface ComposedCapture {

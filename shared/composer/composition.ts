@@ -3,7 +3,7 @@ import { isDataRole } from '../line/digital-trace';
 import type { LineRole } from '../line/line-map';
 import { isMFamily } from '../packets/packet-lengths';
 import type { ButtonName, Protocol } from '../packets/packet-table';
-import type { ComposedCapture, ComposedTruth } from './compose';
+import type { ComposedCapture, ComposedTruth, Sag } from './compose';
 import { encodePnp } from './encode-identification';
 import { encodePacket, largestStep } from './encode-packet';
 import { figureSteps } from './figures';
@@ -28,12 +28,15 @@ export class Composition {
   private readonly hostPen: SerialPen;
   private readonly truth: Mutable<ComposedTruth> = { characters: [], resets: [], packets: [], faults: [] };
   private readonly buttons = new Set<ButtonName>();
+  private readonly sags = new Map<LineRole, Sag[]>();
   private readonly seed: number;
+  private protocol: Protocol;
   private now = 0;
   private latest = 0;
 
   constructor(private readonly script: Script) {
     this.seed = script.seed ?? 1;
+    this.protocol = script.protocol;
     const roles = new Set<LineRole>(['data', 'rts', 'dtr', 'txd', ...(script.lines ?? [])]);
     for (const role of roles) this.lines.set(role, new LineDrawing(startLevel(script, role)));
     const framing = parseFraming(script.framing ?? defaultFraming(script.protocol));
@@ -60,19 +63,24 @@ export class Composition {
         this.now += this.length(step.ms, index);
         break;
       case 'set':
-        this.line(step.line, index).set(this.now, step.on);
+        this.set(step.line, step.on, index);
         break;
       case 'reset':
         this.reset(step, index);
         break;
       case 'move':
-        this.packet(step.dx, step.dy, step.wheel ?? 0, index, step.fault);
+        this.packet(step.dx, step.dy, step.wheel ?? 0, index, step);
         break;
       case 'press':
-        this.click(step.button, true, index, step.fault);
-        break;
       case 'release':
-        this.click(step.button, false, index, step.fault);
+        this.click(step, index);
+        break;
+      case 'protocol':
+        this.note(index, `packets of ${step.protocol} from here`);
+        this.protocol = step.protocol;
+        break;
+      case 'sag':
+        this.sag(step, index);
         break;
       case 'draw':
         this.draw(step, index);
@@ -111,7 +119,12 @@ export class Composition {
       name: this.script.name,
       seed: this.seed,
       durationNs: Math.round(this.latest),
-      lines: roles.map((role) => ({ role, polarity, changes: this.line(role).finish() })),
+      lines: roles.map((role) => ({
+        role,
+        polarity,
+        changes: this.line(role).finish(),
+        sags: [...(this.sags.get(role) ?? [])].sort((a, b) => a.from - b.from),
+      })),
       truth: this.truth,
     };
   }
@@ -131,13 +144,17 @@ export class Composition {
     this.truth.faults.push({ at: Math.round(this.now), step, kind });
   }
 
+  private set(role: Extract<Step, { do: 'set' }>['line'], isOn: boolean, index: number): void {
+    this.line(role, index).set(this.now, isOn);
+    if (role === 'dtr' && this.script.dsrFollows !== false) this.lines.get('dsr')?.set(this.now, isOn);
+  }
+
   private reset(step: Extract<Step, { do: 'reset' }>, index: number): void {
     const rts = this.line('rts');
-    const dtr = this.line('dtr');
     rts.set(this.now, false);
-    if (step.withDtr === true) dtr.set(this.now, false);
+    if (step.withDtr === true) this.set('dtr', false, index);
     this.now += this.length(step.widthMs, index);
-    if (step.withDtr === true) dtr.set(this.now, true);
+    if (step.withDtr === true) this.set('dtr', true, index);
     rts.set(this.now, true);
     this.buttons.clear();
     const onAt = Math.round(this.now);
@@ -155,19 +172,30 @@ export class Composition {
       if (i > 0) this.now += this.length(step.gapMs ?? 0, index);
       this.character(letter.charCodeAt(0));
     });
-    if (step.pnp !== undefined) for (const value of encodePnp(step.pnp)) this.character(value);
+    if (step.pnp !== undefined) {
+      for (const value of encodePnp(step.pnp)) {
+        this.now += this.length(step.pnpGapMs ?? 0, index);
+        this.character(value);
+      }
+    }
     this.truth.resets.push({ onAt, replyAt, identity: identity === '' ? null : identity });
     this.now += AFTER_REPLY;
   }
 
-  private click(button: ButtonName, isDown: boolean, index: number, fault?: PacketFault): void {
+  private click(step: Extract<Step, { do: 'press' | 'release' }>, index: number): void {
+    const { button } = step;
+    const isDown = step.do === 'press';
     if (this.buttons.has(button) === isDown) {
       throw new ScriptError(`the ${button} button is already ${isDown ? 'down' : 'up'}`, index);
     }
     const wasMiddleDown = this.buttons.has('middle');
     if (isDown) this.buttons.add(button);
     else this.buttons.delete(button);
-    this.packet(0, 0, 0, index, fault, wasMiddleDown);
+    if (step.contactMs !== undefined) {
+      this.line('contact', index).set(this.now, isDown);
+      this.now += this.length(step.contactMs, index);
+    }
+    this.packet(0, 0, 0, index, step, wasMiddleDown);
   }
 
   private draw(step: Extract<Step, { do: 'draw' }>, index: number): void {
@@ -184,10 +212,11 @@ export class Composition {
     dy: number,
     wheel: number,
     index: number,
-    fault?: PacketFault,
+    how: { readonly fault?: PacketFault; readonly gapMs?: number } = {},
     wasMiddleDown?: boolean,
   ): void {
-    const { protocol } = this.script;
+    const { protocol } = this;
+    const { fault } = how;
     const largest = largestStep(protocol);
     if (!Number.isInteger(dx) || !Number.isInteger(dy) || Math.max(Math.abs(dx), Math.abs(dy)) > largest) {
       throw new ScriptError(`(${dx}, ${dy}) is no step of whole counts up to ${largest}`, index);
@@ -205,7 +234,10 @@ export class Composition {
     const values = encodePacket(protocol, report, release);
     const at = Math.round(this.now);
     if (fault !== undefined) this.note(index, `${fault.kind} of character ${fault.character + 1}`);
-    values.forEach((value, i) => this.packetCharacter(value, i, fault));
+    values.forEach((value, i) => {
+      if (i > 0) this.now += this.length(how.gapMs ?? 0, index);
+      this.packetCharacter(value, i, fault);
+    });
     const isWhole = fault === undefined || fault.kind === 'bits';
     const isTold = protocol === 'MZ';
     if (isWhole) {
@@ -234,7 +266,15 @@ export class Composition {
   private glitch(step: Extract<Step, { do: 'glitch' }>, index: number): void {
     const from = this.now + this.length(step.afterMs ?? 0, index);
     this.note(index, 'glitch');
-    this.line('data').pulse(from, from + this.length(step.widthUs / 1000, index));
+    this.line(step.line ?? 'data', index).pulse(from, from + this.length(step.widthUs / 1000, index));
+  }
+
+  private sag(step: Extract<Step, { do: 'sag' }>, index: number): void {
+    const from = this.now + this.length(step.afterMs ?? 0, index);
+    this.note(index, 'sag');
+    const list = this.sags.get(step.line) ?? [];
+    list.push({ from, to: from + this.length(step.ms, index), volts: step.volts });
+    this.sags.set(step.line, list);
   }
 
   private breakLine(ms: number, index: number): void {

@@ -10,13 +10,12 @@ export function encodePnp(pnp: PnpScript): number[] {
   while (optional.length > 0 && optional[optional.length - 1] === undefined) optional.pop();
   const body = [
     form === 6 ? 0x08 : 0x28,
-    (revision >> 6) & 0x3f,
-    revision & 0x3f,
+    ...(pnp.revisionBytes ?? [(revision >> 6) & 0x3f, revision & 0x3f]),
     ...text(pnp.eisaId),
     ...text(pnp.productId),
     ...optional.flatMap((field) => [...text('\\'), ...text(field ?? '')]),
   ];
-  const end = form === 6 ? 0x09 : 0x29;
+  const end = pnp.end ?? (form === 6 ? 0x09 : 0x29);
   if (optional.length === 0) return [...body, end];
   const sum = [...body, end].reduce((a, b) => a + b, 0) & 0xff;
   const checksum = pnp.checksum ?? sum.toString(16).toUpperCase().padStart(2, '0');

@@ -27,6 +27,10 @@ export interface PnpScript {
   readonly userName?: string;
   /** Sent instead of the right checksum. */
   readonly checksum?: string;
+  /** Sent instead of the two characters of the revision. */
+  readonly revisionBytes?: readonly [number, number];
+  /** Sent instead of the End PnP of the form. */
+  readonly end?: number;
 }
 
 /** What goes wrong with the next packet. `character` counts from 0 within it. */
@@ -41,7 +45,8 @@ export type Step =
   | { readonly do: 'wait'; readonly ms: number }
   | {
       readonly do: 'set';
-      readonly line: 'rts' | 'dtr' | 'dsr' | 'contact' | 'supply' | 'ready';
+      readonly line: 'rts' | 'dtr' | 'txd' | 'dsr' | 'contact' | 'supply' | 'ready';
+      /** Of TXD: at mark. */
       readonly on: boolean;
     }
   /** RTS OFF (if it is ON), after `widthMs` ON, the reply after `latencyMs`; null: silent. Ends 5 ms after the reply. */
@@ -54,6 +59,8 @@ export type Step =
       /** Pause between the characters of the identity, ms. */
       readonly gapMs?: number;
       readonly pnp?: PnpScript;
+      /** Pause before each character of the PnP string, ms. */
+      readonly pnpGapMs?: number;
       /** Sent before the identification. */
       readonly strays?: readonly number[];
       /** DTR falls and rises with RTS. */
@@ -64,10 +71,17 @@ export type Step =
       readonly dx: number;
       readonly dy: number;
       readonly wheel?: number;
+      /** Pause before each character but the first, ms. */
+      readonly gapMs?: number;
       readonly fault?: PacketFault;
     }
-  | { readonly do: 'press'; readonly button: ButtonName; readonly fault?: PacketFault }
-  | { readonly do: 'release'; readonly button: ButtonName; readonly fault?: PacketFault }
+  /** With `contactMs` the contact closes or opens now, and the packet comes that much later. */
+  | {
+      readonly do: 'press' | 'release';
+      readonly button: ButtonName;
+      readonly contactMs?: number;
+      readonly fault?: PacketFault;
+    }
   /** A figure drawn in packets back to back; `pauseMs` between packets. */
   | {
       readonly do: 'draw';
@@ -79,12 +93,27 @@ export type Step =
       readonly angle?: number;
       readonly pauseMs?: number;
     }
+  /** From here on packets have the format of another protocol of the same frame, without a word. */
+  | { readonly do: 'protocol'; readonly protocol: Protocol }
   | { readonly do: 'idle-packet' }
   | { readonly do: 'characters'; readonly values: readonly number[] }
   /** Bytes from the host on TXD. */
   | { readonly do: 'host'; readonly values: readonly number[] }
-  /** A pulse of the other level on the data line, `afterMs` from here; time does not move on. */
-  | { readonly do: 'glitch'; readonly widthUs: number; readonly afterMs?: number }
+  /** A pulse of the other level, by default on the data line, `afterMs` from here; time does not move on. */
+  | {
+      readonly do: 'glitch';
+      readonly widthUs: number;
+      readonly afterMs?: number;
+      readonly line?: 'data' | 'rts' | 'dtr' | 'txd' | 'dsr' | 'contact';
+    }
+  /** Captures of volts: the line is lower by so much for a while, `afterMs` from here; time does not move on. */
+  | {
+      readonly do: 'sag';
+      readonly line: LineRole;
+      readonly volts: number;
+      readonly ms: number;
+      readonly afterMs?: number;
+    }
   | { readonly do: 'break'; readonly ms: number }
   /** A line whose level is not known for a while from here; time does not move on. */
   | { readonly do: 'unknown'; readonly line: 'data' | 'rts' | 'dtr'; readonly ms: number };
@@ -109,5 +138,7 @@ export interface Script {
   readonly lines?: readonly LineRole[];
   /** Levels at the begin; default RTS OFF, DTR ON. */
   readonly start?: { readonly rts?: boolean; readonly dtr?: boolean };
+  /** DSR follows DTR, as the device couples them; default true. */
+  readonly dsrFollows?: boolean;
   readonly steps: readonly Step[];
 }

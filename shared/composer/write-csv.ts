@@ -1,5 +1,7 @@
 import type { LineRole } from '../line/line-map';
 import type { ComposedCapture } from './compose';
+import { LineVoltage } from './line-voltage';
+import type { VoltsLayout } from './line-voltage';
 import { SeededRandom } from './random';
 import { channelLevel } from './write-vcd';
 
@@ -15,8 +17,8 @@ export interface CsvLayout {
   readonly names?: Partial<Record<LineRole, string>>;
   readonly hasHeader?: boolean;
   readonly lineEnd?: '\n' | '\r\n';
-  /** Voltages of a positive and a negative line, and peak noise, for `volts`. */
-  readonly volts?: { readonly high: number; readonly low: number; readonly noise: number };
+  /** Of `volts`. */
+  readonly volts?: VoltsLayout;
 }
 
 const NS_PER_UNIT = { s: 1e9, ms: 1e6, us: 1e3, ns: 1, none: 1 };
@@ -39,12 +41,13 @@ export function* writeCsv(capture: ComposedCapture, layout: CsvLayout): Generato
   };
   // A generator of its own, so that the same capture always has the same noise.
   const random = new SeededRandom(capture.seed ^ 0x5eed);
+  const noise = layout.volts?.noise ?? 0.1;
+  const rows: Iterable<[number, string[]]> =
+    layout.rows === 'volts'
+      ? voltRows(capture, rate, layout.volts, (volts) => number(volts + random.signed() * noise, 3))
+      : digitalRows(capture, layout.rows === 'changes' ? undefined : rate);
   let piece = '';
-  for (const [at, levels] of layout.rows === 'changes' ? changeRows(capture) : sampleRows(capture, rate)) {
-    const cells =
-      layout.rows === 'volts'
-        ? levels.map((level) => number(voltsOf(level, layout, random), 3))
-        : levels.map(digital);
+  for (const [at, cells] of rows) {
     const stamp = time === 'none' ? [] : [number(at / NS_PER_UNIT[time], DIGITS[time])];
     piece += [...stamp, ...cells].join(separator) + end;
     if (piece.length > 1 << 16) {
@@ -55,13 +58,20 @@ export function* writeCsv(capture: ComposedCapture, layout: CsvLayout): Generato
   yield piece;
 }
 
-function digital(level: number): string {
-  return '01x'[level];
+function* digitalRows(capture: ComposedCapture, rate: number | undefined): Generator<[number, string[]]> {
+  for (const [at, levels] of rate === undefined ? changeRows(capture) : sampleRows(capture, rate)) {
+    yield [at, levels.map((level) => '01x'[level])];
+  }
 }
 
-function voltsOf(level: number, layout: CsvLayout, random: SeededRandom): number {
-  const { high, low, noise } = layout.volts ?? { high: 9, low: -9, noise: 0.1 };
-  return (level === 1 ? high : level === 0 ? low : 0) + random.signed() * noise;
+function* voltRows(
+  capture: ComposedCapture,
+  rate: number,
+  layout: VoltsLayout | undefined,
+  write: (volts: number) => string,
+): Generator<[number, string[]]> {
+  const lines = capture.lines.map((line) => new LineVoltage(line, layout));
+  for (const at of sampleInstants(capture, rate)) yield [at, lines.map((line) => write(line.at(at)))];
 }
 
 /** One row for each instant at which a line changes, and one for the end. */
@@ -74,12 +84,13 @@ function* changeRows(capture: ComposedCapture): Generator<[number, number[]]> {
   );
 }
 
-function* sampleRows(capture: ComposedCapture, rate: number): Generator<[number, number[]]> {
+function sampleRows(capture: ComposedCapture, rate: number): Generator<[number, number[]]> {
+  return rowsAt(capture, sampleInstants(capture, rate));
+}
+
+function* sampleInstants(capture: ComposedCapture, rate: number): Generator<number> {
   const count = Math.floor((capture.durationNs * rate) / 1e9);
-  function* instants(): Generator<number> {
-    for (let i = 0; i <= count; i++) yield (i * 1e9) / rate;
-  }
-  yield* rowsAt(capture, instants());
+  for (let i = 0; i <= count; i++) yield (i * 1e9) / rate;
 }
 
 /** Channel levels at ascending instants. */
