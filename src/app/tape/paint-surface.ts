@@ -8,6 +8,7 @@ export interface PaintSurface {
 /**
  * Fits the canvas to a size in CSS px and returns its context, scaled.
  * @param isOpaque every pixel is painted each time: cheaper to put on the screen; must stay the same for a canvas
+ * @param mostPixelsPerPx caps the device pixel ratio
  * @returns null where the browser gives none, or there is no room
  */
 export function prepareSurface(
@@ -15,8 +16,9 @@ export function prepareSurface(
   widthPx: number,
   heightPx: number,
   isOpaque = false,
+  mostPixelsPerPx = Infinity,
 ): PaintSurface | null {
-  const ratio = window.devicePixelRatio || 1;
+  const ratio = Math.min(window.devicePixelRatio || 1, mostPixelsPerPx);
   const [width, height] = [Math.round(widthPx * ratio), Math.round(heightPx * ratio)];
   if (canvas.width !== width || canvas.height !== height) {
     canvas.width = width;

@@ -20,6 +20,7 @@ import type { TapeView } from './drawing/view';
 import { paperWidth, timeScaleOf } from './drawing/view';
 import { hostSize } from './element-size';
 import { onFrame } from './on-frame';
+import { PaintPace } from './paint-pace';
 import { prepareSurface } from './paint-surface';
 import { PaletteSource } from './palette-source';
 import { TapeStage } from './tape-stage';
@@ -50,6 +51,7 @@ export class TapeCanvas {
   private readonly pointer = inject(TapePointer);
   private readonly element: HTMLElement = inject<ElementRef<HTMLElement>>(ElementRef).nativeElement;
   private readonly size = hostSize();
+  private readonly pace = new PaintPace();
 
   /** Number of the capture, for the label. */
   readonly name = input.required<string>();
@@ -103,10 +105,18 @@ export class TapeCanvas {
         view: { ...this.still(), heightPx: this.heightPx() },
         lanes: this.lanes(),
         palette: this.palette(),
+        isCoarse: this.pace.isCoarse(),
       }),
-      ({ model, view, lanes, palette }) => {
+      ({ model, view, lanes, palette, isCoarse }) => {
         if (model === null) return;
-        const sheet = prepareSurface(this.sheetLayer().nativeElement, view.widthPx, view.heightPx, true);
+        this.pace.painted();
+        const sheet = prepareSurface(
+          this.sheetLayer().nativeElement,
+          view.widthPx,
+          view.heightPx,
+          true,
+          isCoarse ? 1 : Infinity,
+        );
         if (sheet !== null) paintTape(sheet.ctx, model, view, lanes, palette);
       },
     );
