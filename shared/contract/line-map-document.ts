@@ -19,6 +19,8 @@ export const lineMapSchema = z.strictObject({
   resolutionS: z.number().positive().optional(),
   timeAccuracyPpm: z.number().min(0).max(1e6).optional(),
   thresholdSkewS: z.number().min(0).optional(),
+  voltageAccuracyPercent: z.number().min(0).max(100).optional(),
+  voltageAccuracyV: z.number().min(0).max(100).optional(),
   excluded: z
     .array(
       z

@@ -2,6 +2,10 @@ import * as z from 'zod';
 import { definitionOf } from '../rules/definitions';
 import type { Rulebook } from '../rules/rulebook';
 
+const band = z
+  .strictObject({ from: z.number(), to: z.number() })
+  .refine(({ from, to }) => to >= from, 'the band ends below its begin');
+
 const rule = z.strictObject({
   id: z.string().refine((id) => definitionOf(id) !== undefined, 'there is no such rule'),
   enabled: z.boolean().default(true),
@@ -10,6 +14,7 @@ const rule = z.strictObject({
   limit: z.number().nullable().default(null),
   warningLimit: z.number().optional(),
   minimumCount: z.number().int().min(1).optional(),
+  bands: z.strictObject({ receiver: band, driver: band }).optional(),
 });
 
 /** A rulebook as a document: JSON in a file, in the store, in an editor. */

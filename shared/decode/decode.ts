@@ -25,6 +25,7 @@ import type { Reset } from '../resets/reset';
 import type { Span } from '../time/ticks';
 import { ticksPerSecond, toTicks } from '../time/time-base';
 import type { Decoded } from './decoded';
+import { packetSource } from './packet-source';
 import { findResolution } from './resolution';
 import { resolveLines } from './resolve-lines';
 
@@ -72,12 +73,7 @@ export function decode(capture: Capture, map: LineMap = {}, options: DecodeOptio
           hasEightBits: read?.line.format.dataBits === 8,
         });
   const resetOfCharacter = indexIdentifications(characters, resets);
-  const source: PacketSource = {
-    characters,
-    isIdentification: Uint8Array.from(resetOfCharacter, (reset) => Number(reset >= 0)),
-    barriers: findBarriers(rts, lines.data?.trace ?? null),
-    ticksPerSecond: perSecond,
-  };
+  const source = packetSource(characters, resetOfCharacter, rts, lines.data?.trace ?? null, perSecond);
   const framing =
     read === null || characters.count === 0 ? null : describeFraming(read, characters, options, perSecond);
   const choice = framing === null ? null : protocolOf(source, framing, resets, options.protocol);
@@ -189,15 +185,6 @@ function unknownSpansOf(capture: Capture, map: LineMap): Span[] {
     endTicks: Math.min(capture.endTicks, Math.ceil(toTicks(capture.timeBase, span.endS))),
   }));
   return mergeSpans([...capture.gaps, ...excluded]);
-}
-
-/** Instants no packet reaches across: changes of RTS, the begin of unknown stretches of the data line. */
-function findBarriers(rts: LevelTrace | null, data: LevelTrace | null): Float64Array {
-  const barriers: number[] = rts === null ? [] : Array.from(rts.ticks);
-  if (data !== null) {
-    for (let i = 0; i < data.ticks.length; i++) if (data.levels[i] === UNKNOWN) barriers.push(data.ticks[i]);
-  }
-  return Float64Array.from(barriers).sort();
 }
 
 function firstKnown(trace: LevelTrace): number {

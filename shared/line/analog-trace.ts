@@ -146,7 +146,7 @@ function isBeyond(value: number, middle: number, level: number): boolean {
 }
 
 /** Typical sample-to-sample scatter away from the thresholds, in volts: median absolute step ÷ √2 × 1.5, over at most 4096 pairs. */
-function estimateNoise(values: Float32Array, thresholds: Thresholds): number {
+export function estimateNoise(values: Float32Array, thresholds: Thresholds): number {
   const steps: number[] = [];
   const stride = Math.max(1, Math.floor(values.length / 4096));
   for (let i = stride; i < values.length; i += stride) {

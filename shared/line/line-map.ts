@@ -46,12 +46,17 @@ export interface LineMap {
   readonly timeAccuracyPpm?: number;
   /** Difference in delay between the thresholds of two channels, in seconds. */
   readonly thresholdSkewS?: number;
+  /** Accuracy of the instrument's voltages, percent of the value plus volts; default 3 % and 0.1 V (house). */
+  readonly voltageAccuracyPercent?: number;
+  readonly voltageAccuracyV?: number;
   readonly excluded?: readonly ExcludedSpan[];
   readonly declared?: readonly DeclaredSpan[];
   /** Counts per inch the device claims. */
   readonly countsPerInch?: number;
-  /** Which end of the line was probed: decides the limits of LVL-1 and LVL-2. */
+  /** Which end of the line was probed (a driver with its load of 3 to 7 kΩ): decides the limits of LVL-1 to LVL-3. */
   readonly probedEnd?: 'receiver' | 'driver' | 'open-circuit';
 }
 
 export const DEFAULT_TIME_ACCURACY_PPM = 100;
+export const DEFAULT_VOLTAGE_ACCURACY_PERCENT = 3;
+export const DEFAULT_VOLTAGE_ACCURACY_V = 0.1;

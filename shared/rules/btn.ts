@@ -5,9 +5,11 @@ import {
   IMPLICIT_RELEASE,
   MIDDLE,
 } from '../packets/packet-table';
+import { findButtonChanges } from '../packets/button-changes';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
 import { cap, figure, notApplicable, notShown, plural } from './rule-context';
-import { judgeCount } from './verdict';
+import type { Judgement } from './verdict';
+import { judgeAtLeast, worseOf } from './verdict';
 
 function lacks(context: RuleContext): RuleOutcome | undefined {
   if (context.decoded.packets.count === 0) return notShown('there are no packets in the capture');
@@ -18,43 +20,53 @@ function lacks(context: RuleContext): RuleOutcome | undefined {
 export function judgeBounce(context: RuleContext): RuleOutcome {
   const missing = lacks(context);
   if (missing !== undefined) return missing;
-  const { packets, characters } = context.decoded;
-  const { buttons, firstCharacter, characterCount } = packets;
+  const { packets, characters, resets } = context.decoded;
+  const { firstCharacter, characterCount } = packets;
+  const startOf = (p: number): number => characters.startTicks[firstCharacter[p]];
+  const resetTicks = resets.map((reset) => reset.onTicks);
   const fastest = context.ticksOfMs(context.limit);
   const places: Place[] = [];
+  let verdict: Judgement = 'pass';
   let changes = 0;
+  let pairs = 0;
+  let suspects = 0;
+  let closest: { apart: number; limit: number } | undefined;
   BUTTON_NAMES.forEach((name, bit) => {
-    let changedAt = -Infinity;
-    let before = 0;
-    for (let p = 0; p < packets.count; p++) {
-      const now = (buttons[p] >> bit) & 1;
-      if (now === before) continue;
-      before = now;
-      changes += 1;
-      const start = characters.startTicks[firstCharacter[p]];
-      const shortest = Math.max(fastest, 1.2 * characterCount[p] * context.characterTicks);
-      if (start - changedAt < shortest) {
-        places.push({
-          verdict: 'violation',
-          startTicks: changedAt,
-          endTicks: start,
-          measured: context.ms(start - changedAt),
-          uncertainty: context.ms(context.differenceUncertainty(start - changedAt, true)),
-          limit: context.ms(shortest),
-          message: `The ${name} button changes twice within ${figure(context.ms(start - changedAt))} ms: possibly bounce`,
-        });
-      }
-      changedAt = start;
+    const list = findButtonChanges(packets, bit, startOf, resetTicks);
+    changes += list.length;
+    for (let i = 1; i < list.length; i++) {
+      const from = startOf(list[i - 1].packet);
+      const to = startOf(list[i].packet);
+      const limit = Math.max(fastest, 1.2 * characterCount[list[i].packet] * context.characterTicks);
+      const uncertainty = context.differenceUncertainty(to - from, 'data');
+      const judged = judgeAtLeast(to - from, uncertainty, limit, context.setting.decision);
+      pairs += 1;
+      verdict = worseOf(verdict, judged) as Judgement;
+      if (closest === undefined || to - from - limit < closest.apart - closest.limit)
+        closest = { apart: to - from, limit };
+      if (judged === 'pass') continue;
+      suspects += 1;
+      places.push({
+        verdict: judged,
+        startTicks: from,
+        endTicks: to,
+        measured: context.ms(to - from),
+        uncertainty: context.ms(uncertainty),
+        limit: context.ms(limit),
+        message: `The ${name} button changes twice within ${figure(context.ms(to - from))} ms: possibly bounce`,
+      });
     }
   });
   if (changes === 0) return notShown('no button changes in the capture');
+  if (closest === undefined) return notShown('no button changes twice in the capture');
   return {
-    verdict: judgeCount(places.length, 0, 0),
-    n: changes,
-    measured: places.length,
-    uncertainty: 0,
+    verdict,
+    n: pairs,
+    measured: context.ms(closest.apart),
+    uncertainty: context.ms(context.differenceUncertainty(closest.apart, 'data')),
     uncertaintyKind: 'bound',
-    reason: `${places.length} of ${plural(changes, 'change')} may be bounce`,
+    limit: context.ms(closest.limit),
+    reason: `the closest of ${plural(pairs, 'pair')} of changes are ${figure(context.ms(closest.apart))} ms apart; ${suspects} may be bounce`,
     findings: cap(places.map((place) => context.finding(place))),
   };
 }
@@ -63,8 +75,16 @@ export function judgeBounce(context: RuleContext): RuleOutcome {
 export function judgeHeldAtEnd(context: RuleContext): RuleOutcome {
   const missing = lacks(context);
   if (missing !== undefined) return missing;
-  const { packets, characters, capture } = context.decoded;
+  const { packets, characters, capture, resets } = context.decoded;
   const last = packets.count - 1;
+  const lastTicks = characters.startTicks[packets.firstCharacter[last]];
+  if (resets.some((reset) => reset.onTicks > lastTicks)) {
+    return {
+      verdict: 'pass',
+      n: packets.count,
+      reason: 'a reset after the last packet lets go of every button',
+    };
+  }
   const held = BUTTON_NAMES.filter((_, bit) => ((packets.buttons[last] >> bit) & 1) === 1);
   if (held.length === 0) return { verdict: 'pass', n: packets.count, reason: 'no button is held at the end' };
   const words = `${held.join(' and ')} ${held.length === 1 ? 'is' : 'are'} still held at the end of the capture`;
@@ -75,7 +95,7 @@ export function judgeHeldAtEnd(context: RuleContext): RuleOutcome {
     findings: [
       context.finding({
         verdict: 'violation',
-        startTicks: characters.startTicks[packets.firstCharacter[last]],
+        startTicks: lastTicks,
         endTicks: capture.endTicks,
         message: `${words.charAt(0).toUpperCase()}${words.slice(1)}`,
       }),
@@ -92,7 +112,8 @@ export function judgeThirdButton(context: RuleContext): RuleOutcome {
     return {
       verdict: 'violation',
       n: packets.count,
-      reason: 'the third button is told by packets without movement: only hosts that toggle on them follow',
+      reason:
+        'the third button is told by packets without movement: only hosts that toggle on them follow (A, G, H)',
     };
   }
   if (protocol !== 'M3') return notApplicable('only M3 and M-null have variants of the third button');
@@ -112,9 +133,9 @@ export function judgeThirdButton(context: RuleContext): RuleOutcome {
     return notShown('the middle button is not pressed and released in the capture');
   const reason =
     implicit > 0
-      ? `${implicit} of ${plural(presses, 'release')} are told by a three-character packet only: hosts that hold the button until a fourth character comes keep it down`
+      ? `${implicit} of ${plural(presses, 'release')} are told by a three-character packet only: suits host G; hosts that hold the button until a fourth character comes (B, C, H) keep it down`
       : gapsWhileHeld > 0
-        ? `${gapsWhileHeld} packets while held have no fourth character: hosts that take this for a release let the button go`
-        : 'a fourth character comes in each packet while held and once on release: suits both families of hosts';
+        ? `${gapsWhileHeld} packets while held have no fourth character: hosts that take this for a release (G) let the button go`
+        : 'a fourth character comes in each packet while held and once on release: suits both families of hosts (B, C, H and G)';
   return { verdict: implicit > 0 || gapsWhileHeld > 0 ? 'violation' : 'pass', n: presses, reason };
 }

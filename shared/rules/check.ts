@@ -1,12 +1,17 @@
 import type { Decoded } from '../decode/decoded';
+import { judgeContactsAndReports, judgeContactToReport } from './contact';
 import { judgeBounce, judgeHeldAtEnd, judgeThirdButton } from './btn';
 import { definitionOf, RULE_DEFINITIONS } from './definitions';
 import type { CheckResult, Finding, RuleResult } from './finding';
 import * as frm from './frm';
 import * as hsk from './hsk';
 import { judgeCompatibleIds, judgeDeviations, judgeStringTiming } from './idn';
+import * as lvl from './lvl';
+import { judgeSlew, judgeStraightThrough, judgeTransitionTime } from './lvl-edges';
 import * as mov from './mov';
 import * as pkt from './pkt';
+import { judgeProtocolChange } from './protocol-change';
+import { judgeFromSheet, judgeHighestRail, judgeLowestRail } from './pwr';
 import { judgeLineUse, judgeLongestStep } from './rpt';
 import type { RuleOutcome } from './rule-context';
 import { MOST_FINDINGS, notApplicable, RuleContext } from './rule-context';
@@ -14,7 +19,7 @@ import type { RuleDefinition } from './rule-definition';
 import type { Rulebook, RuleSetting } from './rulebook';
 import { overallVerdict } from './verdict';
 
-/** Each measured rule with what judges it: the one place to add one. */
+/** Each rule with what judges it: the one place to add one. */
 const JUDGES: Record<string, (context: RuleContext) => RuleOutcome> = {
   'HSK-1': hsk.judgeReplyLatency,
   'HSK-2': hsk.judgeFirstCharacter,
@@ -53,10 +58,13 @@ const JUDGES: Record<string, (context: RuleContext) => RuleOutcome> = {
   'PKT-3': pkt.judgeFourthValues,
   'PKT-4': pkt.judgeIdlePackets,
   'PKT-5': pkt.judgeCutPackets,
+  'PKT-6': judgeProtocolChange,
   'PKT-7': pkt.judgeWheelValues,
   'BTN-1': judgeBounce,
   'BTN-2': judgeHeldAtEnd,
   'BTN-3': judgeThirdButton,
+  'BTN-4': judgeContactToReport,
+  'BTN-5': judgeContactsAndReports,
   'MOV-1': mov.judgeSaturation,
   'MOV-2': mov.judgeWrap,
   'MOV-3': mov.judgeResolution,
@@ -65,6 +73,17 @@ const JUDGES: Record<string, (context: RuleContext) => RuleOutcome> = {
   'MOV-6': mov.judgeCrossAxis,
   'RPT-1': judgeLineUse,
   'RPT-3': judgeLongestStep,
+  'LVL-1': lvl.judgeMark,
+  'LVL-2': lvl.judgeSpace,
+  'LVL-3': lvl.judgeOpenCircuit,
+  'LVL-4': judgeSlew,
+  'LVL-5': judgeTransitionTime,
+  'LVL-6': judgeStraightThrough,
+  'LVL-7': lvl.judgeSag,
+  'PWR-1': judgeFromSheet,
+  'PWR-2': judgeLowestRail,
+  'PWR-3': judgeFromSheet,
+  'PWR-4': judgeHighestRail,
 };
 
 /** Rules about edges: a byte log has none, and its stamps come after the characters. */
@@ -105,14 +124,10 @@ function judge(
   settings: ReadonlyMap<string, RuleSetting>,
 ): RuleOutcome {
   if (!setting.isEnabled) return notApplicable('the rulebook does not ask for it');
-  const judgeRule = JUDGES[definition.id];
-  if (judgeRule === undefined) {
-    return { verdict: 'not-shown', n: 0, reason: 'this version lists the rule but does not measure it yet' };
-  }
   if (decoded.capture.format === 'bytes' && NEEDS_EDGES.test(definition.id)) {
     return { verdict: 'not-shown', n: 0, reason: 'a byte log has no edges: record the lines themselves' };
   }
-  return judgeRule(new RuleContext(decoded, setting, definition, settings));
+  return JUDGES[definition.id](new RuleContext(decoded, setting, definition, settings));
 }
 
 function toResult(setting: RuleSetting, definition: RuleDefinition, outcome: RuleOutcome): RuleResult {

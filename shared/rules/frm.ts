@@ -1,10 +1,12 @@
 import { BREAK_ERROR, FRAMING_ERROR, PARITY_ERROR } from '../characters/character-table';
 import { measureRateWindows, summariseDistortion } from '../characters/edge-distortion';
-import type { DistortionSummary } from '../characters/edge-distortion';
+import type { DistortionSummary, RateWindow } from '../characters/edge-distortion';
+import type { Decoded } from '../decode/decoded';
 import { levelAt } from '../line/level-at';
 import { OFF, UNKNOWN } from '../line/level-trace';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
-import { cap, figure, notApplicable, notShown, plural } from './rule-context';
+import { cap, figure, MOST_PLACES, notApplicable, notShown, plural } from './rule-context';
+import type { Severity } from './rulebook';
 import type { Judgement } from './verdict';
 import { DEFAULT_EXPOSURE, exposureText, judgeAtLeast, judgeAtMost, judgeCount } from './verdict';
 
@@ -60,12 +62,13 @@ export function judgeRate(context: RuleContext): RuleOutcome {
   const nominal = context.nominalBitTicks;
   const judged = windows.map((window) => {
     const error = 100 * (nominal / window.bitTicks - 1);
-    const standard =
-      (context.decoded.resolutionTicks / Math.sqrt(12)) * (Math.sqrt(window.sumS2S1) / window.sumS2);
-    const uncertainty = 100 * ((2 * standard) / nominal + context.timeAccuracy);
+    const uncertainty = rateUncertainty(context, window.sumS2S1, window.sumS2);
     return { window, error, uncertainty, ...judgeTwoLimits(context, Math.abs(error), uncertainty) };
   });
-  const worst = judged.reduce((a, b) => (Math.abs(b.error) > Math.abs(a.error) ? b : a));
+  const worst = judged.reduce((a, b) => {
+    const order = weight(b) - weight(a);
+    return order > 0 || (order === 0 && Math.abs(b.error) > Math.abs(a.error)) ? b : a;
+  });
   const words = (error: number): string => `${figure(Math.abs(error), 3)} % ${error >= 0 ? 'fast' : 'slow'}`;
   const places: Place[] = judged
     .filter((item) => item.verdict !== 'pass')
@@ -93,6 +96,29 @@ export function judgeRate(context: RuleContext): RuleOutcome {
   };
 }
 
+/** What is decided against the blocking limit comes before what is not, and that before the warning limit. */
+function weight({ verdict, severity }: { verdict: Judgement; severity: Severity }): number {
+  if (verdict === 'pass') return 0;
+  return (severity === 'warning' ? 0 : 2) + (verdict === 'violation' ? 2 : 1);
+}
+
+/** U of a rate, percent: 2·(T/√12)·√Σ(S₂ + S₁²) ÷ ΣS₂ ÷ T_nom, and the accuracy of the time base. Source: rules.md 4, FRM-1. */
+function rateUncertainty(context: RuleContext, sumS2S1: number, sumS2: number): number {
+  const standard = ((2 * context.edgeUncertainty('data')) / Math.sqrt(12)) * (Math.sqrt(sumS2S1) / sumS2);
+  return 100 * ((2 * standard) / context.nominalBitTicks + context.timeAccuracy);
+}
+
+/** Three rules ask for the distortion at the measured rate. */
+const SYNCHRONOUS = new WeakMap<Decoded, DistortionSummary>();
+
+function synchronousDistortion(context: RuleContext): DistortionSummary {
+  const kept = SYNCHRONOUS.get(context.decoded);
+  if (kept !== undefined) return kept;
+  const summary = distortion(context, context.bitTicks);
+  SYNCHRONOUS.set(context.decoded, summary);
+  return summary;
+}
+
 function distortion(context: RuleContext, unitTicks: number): DistortionSummary {
   return summariseDistortion(
     context.data!,
@@ -107,21 +133,29 @@ const NO_TRANSITIONS = 'no undamaged character has a transition after its start'
 
 /** FRM-2: gross start-stop distortion, against the nominal element. */
 export function judgeGrossDistortion(context: RuleContext): RuleOutcome {
-  return judgeDistortion(context, context.nominalBitTicks, 'gross start-stop distortion');
+  return judgeDistortion(
+    context,
+    () => distortion(context, context.nominalBitTicks),
+    'gross start-stop distortion',
+  );
 }
 
 /** FRM-8: synchronous start-stop distortion, against the measured element. */
 export function judgeSynchronousDistortion(context: RuleContext): RuleOutcome {
-  return judgeDistortion(context, context.bitTicks, 'synchronous distortion');
+  return judgeDistortion(context, () => synchronousDistortion(context), 'synchronous distortion');
 }
 
-function judgeDistortion(context: RuleContext, unitTicks: number, what: string): RuleOutcome {
+function judgeDistortion(
+  context: RuleContext,
+  summarise: () => DistortionSummary,
+  what: string,
+): RuleOutcome {
   const missing = lacks(context);
   if (missing !== undefined) return missing;
-  const summary = distortion(context, unitTicks);
+  const summary = summarise();
   if (summary.transitions === 0) return notShown(NO_TRANSITIONS);
   const value = Math.max(summary.worstLate, -summary.worstEarly);
-  const uncertainty = (100 * context.differenceUncertainty(0, true)) / context.nominalBitTicks;
+  const uncertainty = (100 * context.differenceUncertainty(0, 'data')) / context.nominalBitTicks;
   const judged = judgeTwoLimits(context, value, uncertainty);
   const { startTicks, endTicks } = context.decoded.characters;
   const p99 =
@@ -232,7 +266,7 @@ export function judgeShortElements(context: RuleContext): RuleOutcome {
     );
   }
   const { ticks, levels, initialLevel } = context.data!;
-  const doubt = context.differenceUncertainty(0, true);
+  const doubt = context.differenceUncertainty(0, 'data');
   const places: Place[] = [];
   let definite = 0;
   let undecided = 0;
@@ -244,7 +278,7 @@ export function judgeShortElements(context: RuleContext): RuleOutcome {
     if (verdict === 'pass') continue;
     if (verdict === 'violation') definite += 1;
     else undecided += 1;
-    if (places.length >= 2000) continue;
+    if (places.length >= MOST_PLACES) continue;
     places.push({
       verdict,
       startTicks: ticks[i - 1],
@@ -267,7 +301,10 @@ export function judgeShortElements(context: RuleContext): RuleOutcome {
     measured: definite,
     uncertainty: undecided,
     uncertaintyKind: 'bound',
-    reason: `${plural(definite, 'element')} shorter than half a bit in ${plural(n, 'character')}`,
+    reason:
+      definite + undecided === 0
+        ? exposureText(0, n, 'characters with an element shorter than half a bit')
+        : `${plural(definite, 'element')} shorter than half a bit in ${plural(n, 'character')}`,
     findings: cap(places.map((place) => context.finding(place))),
   };
 }
@@ -282,14 +319,14 @@ export function judgeInnerGaps(context: RuleContext): RuleOutcome {
   const places: Place[] = [];
   let worst = 0;
   let n = 0;
-  const uncertainty = context.differenceUncertainty(unit, true) / unit;
+  const uncertainty = context.differenceUncertainty(unit, 'data') / unit;
   for (let i = 1; i < characters.count; i++) {
     if (packetOfCharacter[i] < 0 || packetOfCharacter[i] !== packetOfCharacter[i - 1]) continue;
     n += 1;
     const gap = Math.max(0, characters.startTicks[i] - characters.endTicks[i - 1]) / unit;
     if (gap > worst) worst = gap;
     const verdict = judgeAtMost(gap, uncertainty, context.limit, context.setting.decision);
-    if (verdict === 'pass' || places.length >= 2000) continue;
+    if (verdict === 'pass' || places.length >= MOST_PLACES) continue;
     places.push({
       verdict,
       startTicks: characters.endTicks[i - 1],
@@ -314,11 +351,11 @@ export function judgeInnerGaps(context: RuleContext): RuleOutcome {
 export function judgeBias(context: RuleContext): RuleOutcome {
   const missing = lacks(context);
   if (missing !== undefined) return missing;
-  const summary = distortion(context, context.bitTicks);
+  const summary = synchronousDistortion(context);
   if (summary.bias === undefined)
     return notShown('transitions in both directions are needed inside characters');
   const uncertainty =
-    (2 * 100 * context.decoded.resolutionTicks) /
+    (2 * 100 * 2 * context.edgeUncertainty('data')) /
     context.nominalBitTicks /
     Math.sqrt(12 * (summary.transitions / 4));
   return {
@@ -331,19 +368,40 @@ export function judgeBias(context: RuleContext): RuleOutcome {
   };
 }
 
+/** U of the rate over the whole capture, percent. */
+function wholeRateUncertainty(context: RuleContext): number {
+  const windowsOf = (least: number): readonly RateWindow[] =>
+    measureRateWindows(
+      context.data!,
+      context.decoded.characters,
+      context.bitTicks,
+      context.bitsAfterStart,
+      least,
+    );
+  const large = windowsOf(RATE_WINDOW);
+  const windows = large.length > 0 ? large : windowsOf(1);
+  const sum = (of: (window: RateWindow) => number): number => windows.reduce((a, b) => a + of(b), 0);
+  return rateUncertainty(
+    context,
+    sum(({ sumS2S1 }) => sumS2S1),
+    sum(({ sumS2 }) => sumS2),
+  );
+}
+
 /** FRM-10: receiver margin left. */
 export function judgeMargin(context: RuleContext): RuleOutcome {
   const missing = lacks(context);
   if (missing !== undefined) return missing;
-  const summary = distortion(context, context.bitTicks);
+  const summary = synchronousDistortion(context);
   if (summary.transitions === 0) return notShown(NO_TRANSITIONS);
   const position = context.bitsAfterStart + 1.5;
   const rateError = Math.abs(100 * (context.nominalBitTicks / context.bitTicks - 1));
   const delta = Math.max(summary.worstLate, -summary.worstEarly);
   const margin = 50 - QUANTISATION_PERCENT - rateError * position - delta;
+  // U = p·U(rate) + U(δ). Source: rules.md 4, FRM-10.
   const uncertainty =
-    position * 100 * context.timeAccuracy +
-    (100 * context.differenceUncertainty(0, true)) / context.nominalBitTicks;
+    position * wholeRateUncertainty(context) +
+    (100 * context.differenceUncertainty(0, 'data')) / context.nominalBitTicks;
   return {
     verdict: judgeAtLeast(margin, uncertainty, context.limit, context.setting.decision),
     n: summary.transitions,

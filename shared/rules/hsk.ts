@@ -1,12 +1,16 @@
-import { levelAt, holdsLevel } from '../line/level-at';
-import { MARK, OFF, ON } from '../line/level-trace';
+import { countUpTo, holdsLevel, levelAt, reachesLevel } from '../line/level-at';
+import { MARK, OFF, ON, UNKNOWN } from '../line/level-trace';
 import { BREAK_ERROR } from '../characters/character-table';
 import { REPLY_WINDOW_S } from '../resets/find-resets';
 import type { Reset } from '../resets/reset';
 import { performanceIndex } from '../statistics/performance-index';
+import type { PerformanceIndex } from '../statistics/performance-index';
+import { poissonUpperBound } from '../statistics/poisson';
+import { wilsonInterval } from '../statistics/wilson';
+import type { Span } from '../time/ticks';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
 import { cap, figure, notApplicable, notShown, plural, worstVerdict } from './rule-context';
-import { judgeAtLeast, judgeAtMost, judgeCount } from './verdict';
+import { judgeAtLeast, judgeAtMost, judgeCount, worseOf } from './verdict';
 
 const NO_RTS = 'RTS is not in the capture: record RTS beside the data line';
 const NO_DATA = 'the data line is not in the capture';
@@ -67,7 +71,7 @@ function judgeLatency(context: RuleContext, resets: readonly Reset[], what: stri
       continue;
     }
     const latency = reset.replyTicks - reset.onTicks;
-    const uncertainty = context.differenceUncertainty(latency);
+    const uncertainty = context.differenceUncertainty(latency, 'rts', 'data');
     const verdict = judgeAtMost(latency, uncertainty, limit, context.setting.decision);
     if (worst === undefined || latency > worst.latency) worst = { latency, uncertainty };
     places.push({
@@ -157,14 +161,20 @@ export function judgeCharactersWhileOff(context: RuleContext): RuleOutcome {
   if (offTicks === 0) return notShown('RTS is never OFF in the capture');
   const { startTicks, endTicks, errors, count } = context.decoded.characters;
   const places: Place[] = [];
+  const underWay: Span[] = [];
   let definite = 0;
   let undecided = 0;
   for (let i = 0; i < count; i++) {
     if ((errors[i] & BREAK_ERROR) !== 0) continue;
     const at = startTicks[i];
-    if (levelAt(rts, at) !== OFF) continue;
+    if (levelAt(rts, at) !== OFF) {
+      const off = countUpTo(rts.ticks, at);
+      const isUnderWay = off < rts.ticks.length && rts.levels[off] === OFF && rts.ticks[off] < endTicks[i];
+      if (isUnderWay) underWay.push({ startTicks: at, endTicks: endTicks[i] });
+      continue;
+    }
     // A hair more than U: an edge exactly U away is still not told apart.
-    const doubt = context.differenceUncertainty(0) * (1 + 1e-9);
+    const doubt = context.differenceUncertainty(0, 'rts', 'data') * (1 + 1e-9);
     const isNearEdge = levelAt(rts, at + doubt) === ON || levelAt(rts, Math.max(0, at - doubt)) === ON;
     if (isNearEdge) undecided += 1;
     else definite += 1;
@@ -183,9 +193,27 @@ export function judgeCharactersWhileOff(context: RuleContext): RuleOutcome {
     measured: definite,
     uncertainty: undecided,
     uncertaintyKind: 'bound',
-    reason: `${plural(definite, 'character')} in ${figure(context.ms(offTicks), 1)} ms of RTS OFF`,
-    findings: cap(places.map((place) => context.finding(place))),
+    reason:
+      `${plural(definite, 'character')} in ${figure(context.ms(offTicks), 1)} ms of RTS OFF` +
+      rateText(definite, offTicks * context.tickS),
+    findings: cap([...places, ...underWay.map(toUnderWay)].map((place) => context.finding(place))),
   };
+}
+
+/** A character the device had begun when RTS dropped is told, not counted. */
+function toUnderWay(span: Span): Place {
+  return {
+    ...span,
+    verdict: 'pass',
+    severity: 'note',
+    message: 'A character was under way when RTS went OFF; it does not count',
+  };
+}
+
+/** Beside a count of 0: what the rate can still be. */
+function rateText(count: number, seconds: number): string {
+  if (count > 0) return '';
+  return `; the true rate is below ${(poissonUpperBound(0) / seconds).toPrecision(2)} a second (95 %)`;
 }
 
 /** HSK-4: resets without a reply in the window. */
@@ -217,15 +245,19 @@ export function judgeMissingReplies(context: RuleContext): RuleOutcome {
   }
   const least = context.setting.minimumCount ?? 1;
   if (n < least) {
-    return notShown(`${plural(n, 'reset')} with a whole reply window; the rulebook asks for ${least}`);
+    const lack = `${plural(n, 'reset')} with a whole reply window; the rulebook asks for ${least}`;
+    // A miss is a miss, however few the resets.
+    if (judgeCount(silent, undecided, context.limit) !== 'violation') return { ...notShown(lack), n };
   }
+  const answered = n - silent - undecided;
+  const share = wilsonInterval(answered, n);
   return {
     verdict: judgeCount(silent, undecided, context.limit),
     n,
     measured: silent,
     uncertainty: undecided,
     uncertaintyKind: 'bound',
-    reason: `${n - silent - undecided} of ${plural(n, 'reset')} were answered`,
+    reason: `${answered} of ${plural(n, 'reset')} were answered; the true share is ${figure(100 * share.lower, 1)} % or more (95 %, Wilson)`,
     findings: cap(places.map((place) => context.finding(place))),
   };
 }
@@ -272,7 +304,7 @@ export function judgeIdentificationGaps(context: RuleContext): RuleOutcome {
     for (let k = 1; k < reset.identification.length; k++) {
       const i = reset.identification[k];
       const gap = Math.max(0, startTicks[i] - endTicks[i - 1]);
-      const uncertainty = context.differenceUncertainty(gap, true);
+      const uncertainty = context.differenceUncertainty(gap, 'data');
       const verdict = judgeAtMost(gap, uncertainty, limit, context.setting.decision);
       const isWorst = worst === undefined || gap > worst.gap;
       if (isWorst) worst = { gap, uncertainty };
@@ -309,7 +341,7 @@ export function judgePulseWidth(context: RuleContext): RuleOutcome {
   let narrowest: { width: number; uncertainty: number } | undefined;
   for (const reset of resets) {
     const width = reset.onTicks - reset.offTicks;
-    const uncertainty = context.differenceUncertainty(width, true);
+    const uncertainty = context.differenceUncertainty(width, 'rts');
     const judged = judgeAtLeast(width, uncertainty, limit, context.setting.decision);
     const isOpen = !reset.isPulseStartSeen && judged !== 'pass';
     if (!isOpen && (narrowest === undefined || width < narrowest.width)) narrowest = { width, uncertainty };
@@ -350,23 +382,36 @@ function judgeHeldLine(context: RuleContext, role: 'dtr' | 'txd', level: number,
   if (line === undefined) return notShown(`${role.toUpperCase()} is not in the capture`);
   const identified = context.decoded.resets.filter((reset) => reset.identificationEndTicks !== null);
   if (identified.length === 0) return notShown('no reset was answered by an identification');
-  const broken = identified.filter(
-    (reset) => !holdsLevel(line, level, reset.onTicks, reset.identificationEndTicks!),
-  );
+  const other = 1 - level;
+  const doubt = context.differenceUncertainty(0, 'rts', role);
+  const places: Place[] = [];
+  let n = 0;
+  let broken = 0;
+  let undecided = 0;
+  for (const reset of identified) {
+    const end = reset.identificationEndTicks!;
+    if (reachesLevel(line, UNKNOWN, reset.onTicks, end)) continue;
+    n += 1;
+    if (holdsLevel(line, level, reset.onTicks, end)) continue;
+    // A line raised together with RTS may seem to follow it by as much as the resolution.
+    const isBroken = reachesLevel(line, other, reset.onTicks + doubt, end);
+    if (isBroken) broken += 1;
+    else undecided += 1;
+    places.push({
+      verdict: isBroken ? 'violation' : 'inconclusive',
+      startTicks: reset.onTicks,
+      endTicks: end,
+      message: isBroken
+        ? `${words} is not kept from RTS ON to the end of the identification`
+        : `${words} begins at the same moment as RTS ON, as far as the resolution tells`,
+    });
+  }
+  if (n === 0) return notShown(`the level of ${role.toUpperCase()} is not known during any identification`);
   return {
-    verdict: broken.length === 0 ? 'pass' : 'violation',
-    n: identified.length,
-    reason: `${words} through ${identified.length - broken.length} of ${plural(identified.length, 'identification')}`,
-    findings: cap(
-      broken.map((reset) =>
-        context.finding({
-          verdict: 'violation',
-          startTicks: reset.onTicks,
-          endTicks: reset.identificationEndTicks!,
-          message: `${words} is not kept from RTS ON to the end of the identification`,
-        }),
-      ),
-    ),
+    verdict: judgeCount(broken, undecided, 0),
+    n,
+    reason: `${words} through ${n - broken - undecided} of ${plural(n, 'identification')}`,
+    findings: cap(places.map((place) => context.finding(place))),
   };
 }
 
@@ -405,23 +450,35 @@ export function judgeLatencyIndex(context: RuleContext): RuleOutcome {
     ...kind,
     index: performanceIndex(kind.latencies, upperLimit, resolution),
   }));
-  const blind = indexes.find((kind) => kind.index === undefined);
-  if (blind !== undefined) {
+  const judged = indexes.map((kind) => judgeIndex(context, kind.name, kind.latencies.length, kind.index));
+  return judged.reduce((a, b) => (worseOf(a.verdict, b.verdict) === a.verdict ? a : b));
+}
+
+function judgeIndex(
+  context: RuleContext,
+  kind: string,
+  n: number,
+  index: PerformanceIndex | undefined,
+): RuleOutcome {
+  if (index === undefined) {
     return {
       verdict: 'inconclusive',
-      n: blind.latencies.length,
-      reason: `the spread of the latency ${blind.name} is not wider than the resolution`,
+      n,
+      reason: `the spread of the latency ${kind} is not wider than the resolution`,
     };
   }
-  const worst = indexes.reduce((a, b) => (a.index!.value <= b.index!.value ? a : b));
-  const { value, half } = worst.index!;
+  const { value, half, isNormalityDoubtful } = index;
   return {
     verdict: judgeAtLeast(value, half, context.limit, context.setting.decision),
-    n: worst.latencies.length,
+    n,
     measured: value,
     uncertainty: half,
     uncertaintyKind: 'k2',
-    reason: `Ppu ${figure(value)}, 95 % interval ${figure(value - half)} to ${figure(value + half)}, of ${plural(worst.latencies.length, 'reset')} ${worst.name}`,
+    reason:
+      `Ppu ${figure(value)}, 95 % interval ${figure(value - half)} to ${figure(value + half)}, of ${plural(n, 'reset')} ${kind}` +
+      (isNormalityDoubtful
+        ? '; the latencies do not look normally distributed, so the index says little about the share beyond the limit'
+        : ''),
   };
 }
 
@@ -442,7 +499,7 @@ export function judgeHostTiming(context: RuleContext): RuleOutcome {
       longest = Math.max(longest, startTicks[i] - endTicks[i - 1]);
     }
     worst = Math.max(worst, longest);
-    const uncertainty = context.differenceUncertainty(longest);
+    const uncertainty = context.differenceUncertainty(longest, 'rts', 'data');
     places.push({
       verdict: judgeAtMost(longest, uncertainty, limit, context.setting.decision),
       startTicks: reset.onTicks,
@@ -457,7 +514,7 @@ export function judgeHostTiming(context: RuleContext): RuleOutcome {
     verdict: worstVerdict(places, 'not-shown'),
     n: places.length,
     measured: context.ms(worst),
-    uncertainty: context.ms(context.differenceUncertainty(worst)),
+    uncertainty: context.ms(context.differenceUncertainty(worst, 'rts', 'data')),
     uncertaintyKind: 'bound',
     reason: `the longest wait is ${figure(context.ms(worst))} ms over ${plural(places.length, 'reply', 'replies')}`,
     findings: cap(places.filter((place) => place.verdict !== 'pass').map((place) => context.finding(place))),
@@ -469,21 +526,30 @@ export function judgeShortestPulse(context: RuleContext): RuleOutcome {
   const missing = lacks(context);
   if (missing !== undefined) return missing;
   if (!context.isMFamily) return notApplicable(NO_IDENTIFICATION);
-  const answered = context.decoded.resets.filter(
-    (reset) => reset.replyTicks !== null && reset.isPulseStartSeen,
-  );
-  const widths = answered.map((reset) => reset.onTicks - reset.offTicks).sort((a, b) => a - b);
-  if (widths.length < 2 || widths[widths.length - 1] < 1.2 * widths[0]) {
+  const seen = context.decoded.resets.filter((reset) => reset.isPulseStartSeen && !reset.isWindowCut);
+  const widthOf = (reset: Reset): number => reset.onTicks - reset.offTicks;
+  const tried = seen.map(widthOf).sort((a, b) => a - b);
+  const widths = seen
+    .filter((reset) => reset.replyTicks !== null)
+    .map(widthOf)
+    .sort((a, b) => a - b);
+  if (tried.length < 2 || tried[tried.length - 1] < 1.2 * tried[0]) {
     return notShown('reset pulses of several widths are needed, recorded from their beginning');
   }
-  const uncertainty = context.differenceUncertainty(widths[0], true);
+  if (widths.length === 0) return notShown('no reset was answered');
+  if (judgeAtMost(tried[0], 0, context.ticksOfMs(context.limit), 'simple') === 'violation') {
+    return notShown(
+      `the shortest pulse tried is ${figure(context.ms(tried[0]))} ms; one of ${figure(context.limit)} ms or less is needed`,
+    );
+  }
+  const uncertainty = context.differenceUncertainty(widths[0], 'rts');
   return {
     verdict: judgeAtMost(widths[0], uncertainty, context.ticksOfMs(context.limit), context.setting.decision),
-    n: widths.length,
+    n: tried.length,
     measured: context.ms(widths[0]),
     uncertainty: context.ms(uncertainty),
     uncertaintyKind: 'bound',
-    reason: `the shortest pulse that was answered is ${figure(context.ms(widths[0]))} ms`,
+    reason: `the shortest pulse that was answered is ${figure(context.ms(widths[0]))} ms, the shortest tried ${figure(context.ms(tried[0]))} ms`,
   };
 }
 
@@ -495,11 +561,19 @@ export function judgeDsr(context: RuleContext): RuleOutcome {
   const dsr = context.decoded.lines.dsr?.trace;
   const dtr = context.decoded.lines.dtr?.trace;
   if (dsr === undefined || dtr === undefined) return notShown('DSR and DTR must both be in the capture');
-  const events = context.decoded.controlEvents.filter((event) => event.line === 'dtr');
-  if (events.length === 0) return notShown('DTR does not change in the capture');
-  const late = events.filter(
-    (event) => levelAt(dsr, event.ticks + DSR_FOLLOWS_S * context.perSecond) !== (event.isOn ? ON : OFF),
-  );
+  const follows = DSR_FOLLOWS_S * context.perSecond;
+  const changes = context.decoded.controlEvents.filter((event) => event.line === 'dtr');
+  if (changes.length === 0) return notShown('DTR does not change in the capture');
+  // DTR may change back before DSR had its time; then, and at the end of the record, nothing can be said.
+  const events = changes.filter(({ ticks }, i) => {
+    const until = ticks + follows;
+    const isCut = until > context.decoded.capture.endTicks || (changes.at(i + 1)?.ticks ?? Infinity) <= until;
+    return !isCut && levelAt(dsr, until) !== UNKNOWN;
+  });
+  if (events.length === 0) {
+    return notShown('no change of DTR is followed by 10 ms in which DTR stays and DSR is known');
+  }
+  const late = events.filter((event) => levelAt(dsr, event.ticks + follows) !== (event.isOn ? ON : OFF));
   return {
     verdict: late.length === 0 ? 'pass' : 'violation',
     n: events.length,
@@ -509,7 +583,7 @@ export function judgeDsr(context: RuleContext): RuleOutcome {
         context.finding({
           verdict: 'violation',
           startTicks: event.ticks,
-          endTicks: event.ticks + DSR_FOLLOWS_S * context.perSecond,
+          endTicks: event.ticks + follows,
           message: `DTR went ${event.isOn ? 'ON' : 'OFF'}, DSR did not follow within 10 ms`,
         }),
       ),

@@ -13,6 +13,9 @@ function lacks(context: RuleContext): RuleOutcome | undefined {
   if (context.rts === undefined)
     return notShown('RTS is not in the capture: record RTS beside the data line');
   if (context.decoded.resets.length === 0) return notShown('RTS never goes from OFF to ON in the capture');
+  if (context.decoded.resets.every((reset) => reset.replyTicks === null)) {
+    return notShown('no reset was answered, so nobody knows whether a PnP string would come');
+  }
   if (withString(context).length === 0) return notApplicable('no reply carries a PnP string');
   return undefined;
 }
@@ -40,8 +43,14 @@ export function judgeDeviations(context: RuleContext): RuleOutcome {
         };
       }),
   );
+  if (rule === 'IDN-8' && resets.every((reset) => reset.pnp!.form === 7)) {
+    return notApplicable('the string has the 7-bit form');
+  }
   if (rule === 'IDN-2' && places.length === 0) {
     const checked = resets.filter((reset) => reset.pnp!.checksumComputed !== null);
+    if (checked.length === 0 && resets.some((reset) => !reset.pnp!.isComplete)) {
+      return notShown('the string breaks off before its End, so its checksum is not known');
+    }
     if (checked.length === 0) {
       return notApplicable('the string has no optional field, so it carries no checksum');
     }
@@ -88,7 +97,7 @@ export function judgeStringTiming(context: RuleContext): RuleOutcome {
       worst = Math.max(worst, gap);
       const verdict = judgeAtMost(
         gap,
-        context.differenceUncertainty(gap, true),
+        context.differenceUncertainty(gap, 'data'),
         limit,
         context.setting.decision,
       );
@@ -98,7 +107,7 @@ export function judgeStringTiming(context: RuleContext): RuleOutcome {
           startTicks: endTicks[list[k] - 1],
           endTicks: startTicks[list[k]],
           measured: context.ms(gap),
-          uncertainty: context.ms(context.differenceUncertainty(gap, true)),
+          uncertainty: context.ms(context.differenceUncertainty(gap, 'data')),
           message: `A pause of ${figure(context.ms(gap))} ms inside the PnP string, limit ${figure(context.limit)} ms`,
         });
       }
@@ -106,7 +115,7 @@ export function judgeStringTiming(context: RuleContext): RuleOutcome {
     const length = endTicks[list[list.length - 1]] - startTicks[list[0]];
     const verdict = judgeAtMost(
       length,
-      context.differenceUncertainty(length, true),
+      context.differenceUncertainty(length, 'data'),
       whole,
       context.setting.decision,
     );
@@ -116,17 +125,31 @@ export function judgeStringTiming(context: RuleContext): RuleOutcome {
       startTicks: startTicks[list[0]],
       endTicks: endTicks[list[list.length - 1]],
       measured: context.ms(length),
-      uncertainty: context.ms(context.differenceUncertainty(length, true)),
+      uncertainty: context.ms(context.differenceUncertainty(length, 'data')),
       limit: WHOLE_STRING_S * 1e3,
       message: `The whole reply takes ${figure(context.ms(length))} ms, limit ${figure(WHOLE_STRING_S * 1e3)} ms`,
     });
   }
   const hasViolation = places.some((place) => place.verdict === 'violation');
+  // Where only the whole string is too long, its length is the figure.
+  const shown = places.find((place) => place.verdict === (hasViolation ? 'violation' : 'inconclusive'));
+  if (shown?.limit !== undefined) {
+    return {
+      verdict: shown.verdict,
+      n: withString(context).length,
+      measured: shown.measured,
+      uncertainty: shown.uncertainty,
+      uncertaintyKind: 'bound',
+      limit: shown.limit,
+      reason: shown.message,
+      findings: cap(places.map((place) => context.finding(place))),
+    };
+  }
   return {
     verdict: hasViolation ? 'violation' : places.length > 0 ? 'inconclusive' : 'pass',
     n: withString(context).length,
     measured: context.ms(worst),
-    uncertainty: context.ms(context.differenceUncertainty(worst, true)),
+    uncertainty: context.ms(context.differenceUncertainty(worst, 'data')),
     uncertaintyKind: 'bound',
     reason: `the longest pause inside the string is ${figure(context.ms(worst))} ms`,
     findings: cap(places.map((place) => context.finding(place))),
@@ -158,7 +181,7 @@ export function judgeCompatibleIds(context: RuleContext): RuleOutcome {
   if (ids.length === 0) return notApplicable('the string names no compatible id');
   if (protocol === null || packets.count === 0)
     return notShown('there are no packets to compare the compatible ids with');
-  const known = ids.filter((id) => id in PROMISES);
+  const known = [...new Set(ids)].map((id) => id.replace(/^\*/, '')).filter((id) => id in PROMISES);
   if (known.length === 0) return notShown(`no packets are known for ${ids.join(', ')}`);
   const fits = known.some((id) => PROMISES[id].includes(protocol));
   return {

@@ -1,8 +1,11 @@
 import type { DeclaredSpan } from '../line/line-map';
+import type { Decoded } from '../decode/decoded';
+import { poissonUpperBound } from '../statistics/poisson';
+import { wilsonInterval } from '../statistics/wilson';
 import { toTicks } from '../time/time-base';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
 import { cap, figure, notShown, plural, worstVerdict } from './rule-context';
-import { judgeAtMost, judgeCount } from './verdict';
+import { DEFAULT_EXPOSURE, judgeAtMost, judgeCount } from './verdict';
 
 /** Largest step a protocol can say per axis: 127 or 128 counts, twice that in five-byte packets. */
 const LIMIT_COUNTS = 127;
@@ -22,15 +25,18 @@ export function judgeSaturation(context: RuleContext): RuleOutcome {
     if (Math.abs(packets.dx[p]) >= ceiling || Math.abs(packets.dy[p]) >= ceiling) saturated += 1;
   }
   const least = context.setting.minimumCount ?? 100;
-  if (moving < least) return notShown(`${plural(moving, 'moving packet')}; ${least} are needed`);
+  if (moving < least) {
+    return { ...notShown(`${plural(moving, 'moving packet')}; ${least} are needed`), n: moving };
+  }
   const share = (100 * saturated) / moving;
+  const interval = wilsonInterval(saturated, moving);
   return {
     verdict: judgeAtMost(share, 0, context.limit, context.setting.decision),
     n: moving,
     measured: share,
     uncertainty: 0,
     uncertaintyKind: 'bound',
-    reason: `${saturated} of ${plural(moving, 'moving packet')} are at the numeric limit`,
+    reason: `${saturated} of ${plural(moving, 'moving packet')} are at the numeric limit; the true share is ${figure(100 * interval.lower, 1)} to ${figure(100 * interval.upper, 1)} % (95 %, Wilson)`,
   };
 }
 
@@ -38,6 +44,7 @@ export function judgeSaturation(context: RuleContext): RuleOutcome {
 export function judgeWrap(context: RuleContext): RuleOutcome {
   const { packets, characters } = context.decoded;
   if (packets.count < 2) return notShown('fewer than two packets in the capture');
+  const least = context.setting.minimumCount ?? DEFAULT_EXPOSURE;
   const places: Place[] = [];
   for (let p = 1; p < packets.count; p++) {
     const isWrap = (a: number, b: number): boolean =>
@@ -53,8 +60,17 @@ export function judgeWrap(context: RuleContext): RuleOutcome {
       message: `Steps of (${packets.dx[p - 1]}, ${packets.dy[p - 1]}) and (${packets.dx[p]}, ${packets.dy[p]}) follow each other: a counter may have wrapped`,
     });
   }
+  const verdict = judgeCount(places.length, 0, context.limit);
+  if (verdict === 'pass' && characters.count < least) {
+    return {
+      ...notShown(
+        `${plural(places.length, 'suspected wrap')} in ${plural(characters.count, 'character')}; ${least} are needed to call that a pass`,
+      ),
+      n: packets.count,
+    };
+  }
   return {
-    verdict: judgeCount(places.length, 0, context.limit),
+    verdict,
     n: packets.count,
     measured: places.length,
     uncertainty: 0,
@@ -79,16 +95,19 @@ function sumSpans(context: RuleContext, kind: DeclaredSpan['kind']): SpanSum[] {
   const { packets, characters, map, capture } = context.decoded;
   return (map.declared ?? [])
     .filter((span) => span.kind === kind)
-    .map((span) => {
-      const startTicks = toTicks(capture.timeBase, span.startS);
-      const endTicks = toTicks(capture.timeBase, span.endS);
+    .map((span) => ({
+      span,
+      startTicks: Math.max(0, toTicks(capture.timeBase, span.startS)),
+      endTicks: Math.min(capture.endTicks, toTicks(capture.timeBase, span.endS)),
+    }))
+    .filter(({ startTicks, endTicks }) => endTicks > startTicks)
+    .map(({ span, startTicks, endTicks }) => {
       let dx = 0;
       let dy = 0;
       let pathCounts = 0;
       let count = 0;
-      for (let p = 0; p < packets.count; p++) {
-        const at = characters.startTicks[packets.firstCharacter[p]];
-        if (at < startTicks || at >= endTicks) continue;
+      for (let p = firstPacketFrom(context.decoded, startTicks); p < packets.count; p++) {
+        if (characters.startTicks[packets.firstCharacter[p]] >= endTicks) break;
         dx += packets.dx[p];
         dy += packets.dy[p];
         pathCounts += Math.hypot(packets.dx[p], packets.dy[p]);
@@ -98,6 +117,18 @@ function sumSpans(context: RuleContext, kind: DeclaredSpan['kind']): SpanSum[] {
     });
 }
 
+/** Index of the first packet that starts at or after an instant. */
+function firstPacketFrom({ packets, characters }: Decoded, at: number): number {
+  let low = 0;
+  let high = packets.count;
+  while (low < high) {
+    const middle = (low + high) >>> 1;
+    if (characters.startTicks[packets.firstCharacter[middle]] < at) low = middle + 1;
+    else high = middle;
+  }
+  return low;
+}
+
 /** Judges each declared span by one figure. */
 function judgeSpans(
   context: RuleContext,
@@ -105,6 +136,10 @@ function judgeSpans(
   lack: string,
   measure: (sum: SpanSum) => { value: number; uncertainty: number; message: string } | undefined,
 ): RuleOutcome {
+  const { lines, protocol, characters, capture } = context.decoded;
+  if (lines.data === undefined && capture.format !== 'bytes')
+    return notShown('the data line is not in the capture');
+  if (protocol === null && characters.count > 0) return notShown('the characters fit no known protocol');
   const places: Place[] = [];
   for (const sum of sumSpans(context, kind)) {
     const measured = measure(sum);
@@ -173,11 +208,16 @@ export function judgeRest(context: RuleContext): RuleOutcome {
     context,
     'rest',
     'no rest is declared: mark a stretch of 60 s or more',
-    ({ pathCounts, packets }) => ({
-      value: pathCounts,
-      uncertainty: 0,
-      message: `${figure(pathCounts, 0)} counts in ${plural(packets, 'packet')} at rest`,
-    }),
+    ({ pathCounts, packets, startTicks, endTicks }) => {
+      const seconds = (endTicks - startTicks) * context.tickS;
+      const bound = ((60 * poissonUpperBound(0)) / seconds).toPrecision(2);
+      const left = packets === 0 ? `; the true rate is below ${bound} packets a minute (95 %)` : '';
+      return {
+        value: pathCounts,
+        uncertainty: 0,
+        message: `${figure(pathCounts, 0)} counts in ${plural(packets, 'packet')} in ${figure(seconds, 1)} s of rest${left}`,
+      };
+    },
   );
 }
 

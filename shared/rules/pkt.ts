@@ -1,7 +1,7 @@
 import { HAS_FOURTH, HAS_RESERVED_BITS, IS_IDLE } from '../packets/packet-table';
 import type { PacketIncident } from '../packets/packet-table';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
-import { cap, notApplicable, notShown, plural } from './rule-context';
+import { cap, MOST_PLACES, notApplicable, notShown, plural } from './rule-context';
 import { DEFAULT_EXPOSURE, exposureText, judgeCount } from './verdict';
 
 const NO_DATA = 'the data line is not in the capture';
@@ -112,7 +112,7 @@ export function judgePackets(
   for (let p = 0; p < packets.count; p++) {
     if (!picks(p)) continue;
     count += 1;
-    if (places.length >= 2000) continue;
+    if (places.length >= MOST_PLACES) continue;
     const first = packets.firstCharacter[p];
     places.push({
       verdict: 'violation',
@@ -121,13 +121,23 @@ export function judgePackets(
       message,
     });
   }
+  const verdict = judgeCount(count, 0, context.limit);
+  const least = context.setting.minimumCount ?? DEFAULT_EXPOSURE;
+  if (verdict === 'pass' && characters.count < least) {
+    return {
+      ...notShown(
+        `${count} of ${plural(packets.count, 'packet')} ${what}; ${least} characters are needed to call that a pass, here are ${characters.count}`,
+      ),
+      n: packets.count,
+    };
+  }
   return {
-    verdict: judgeCount(count, 0, context.limit),
+    verdict,
     n: packets.count,
     measured: count,
     uncertainty: 0,
     uncertaintyKind: 'bound',
-    reason: `${count} of ${plural(packets.count, 'packet')} ${what}`,
+    reason: exposureText(count, packets.count, `packets ${what}`),
     findings: cap(places.map((place) => context.finding(place))),
   };
 }

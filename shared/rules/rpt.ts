@@ -35,14 +35,16 @@ export function judgeLineUse(context: RuleContext): RuleOutcome {
       message: `The line is in use ${figure(100 * run.lineUse, 1)} % of this stroke, ${figure(run.packetRate, 1)} packets a second`,
     }))
     .filter((place) => place.verdict !== 'pass');
+  const verdict = judgeAtLeast(use, uncertainty, context.limit, context.setting.decision);
   return {
-    verdict: judgeAtLeast(use, uncertainty, context.limit, context.setting.decision),
+    verdict,
     n: runs.length,
     measured: use,
     uncertainty,
     uncertaintyKind: 'bound',
     reason: `${figure(use, 1)} % of the line in use over ${plural(runs.length, 'stroke')}, ${figure(rate, 1)} packets a second`,
-    findings: cap(places.map((place) => context.finding(place))),
+    // The pool decides; single strokes are shown where it does not pass.
+    findings: verdict === 'pass' ? [] : cap(places.map((place) => context.finding(place))),
   };
 }
 
@@ -58,7 +60,7 @@ export function judgeLongestStep(context: RuleContext): RuleOutcome {
     const before = run.longestStepPacket - 1;
     const packetTicks = packets.characterCount[before] * context.characterTicks;
     const value = run.longestStep / packetTicks;
-    const doubt = context.differenceUncertainty(run.longestStep, true) / packetTicks;
+    const doubt = context.differenceUncertainty(run.longestStep, 'data') / packetTicks;
     if (value > worst) {
       worst = value;
       uncertainty = doubt;

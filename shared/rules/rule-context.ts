@@ -1,6 +1,11 @@
 import { bitsAfterStart, elementsPerCharacter } from '../characters/framing';
 import type { Decoded } from '../decode/decoded';
-import { DEFAULT_TIME_ACCURACY_PPM } from '../line/line-map';
+import {
+  DEFAULT_TIME_ACCURACY_PPM,
+  DEFAULT_VOLTAGE_ACCURACY_PERCENT,
+  DEFAULT_VOLTAGE_ACCURACY_V,
+} from '../line/line-map';
+import type { LineRole } from '../line/line-map';
 import type { LevelTrace } from '../line/level-trace';
 import { isMFamily } from '../packets/packet-lengths';
 import type { UncertaintyKind } from '../time/measurement';
@@ -13,6 +18,8 @@ import { worseOf } from './verdict';
 
 /** Findings kept per rule: more help nobody; the counts stay exact. */
 export const MOST_FINDINGS = 1000;
+/** Places gathered per rule before the worst of them become findings: memory stays bounded, the counts exact. */
+export const MOST_PLACES = 2000;
 
 /** What a rule came to. */
 export interface RuleOutcome {
@@ -54,6 +61,7 @@ export class RuleContext {
   readonly characterTicks: number;
   private readonly ppm: number;
   private readonly skewTicks: number;
+  private readonly edgeBounds = new Map<LineRole, number>();
 
   constructor(
     readonly decoded: Decoded,
@@ -94,26 +102,37 @@ export class RuleContext {
   }
 
   /**
-   * Bound of the error of a difference of two edges, in ticks: T (or the errors of two interpolated edges), the accuracy of the
-   * time base, the stated skew. Source: rules.md 1, uncertainty of time.
+   * Bound of the error of a difference of two edges, in ticks: T (half of it an edge, or the worst error of an interpolated
+   * edge), the accuracy of the time base, and the stated skew where the edges lie on two lines.
+   * Source: rules.md 1, uncertainty of time.
    */
-  differenceUncertainty(differenceTicks: number, isSameLine = false): number {
-    const edges = this.edgeUncertainty ?? this.decoded.resolutionTicks;
-    return edges + this.ppm * 1e-6 * Math.abs(differenceTicks) + (isSameLine ? 0 : this.skewTicks);
+  differenceUncertainty(differenceTicks: number, from: LineRole, to: LineRole = from): number {
+    const edges = this.edgeUncertainty(from) + this.edgeUncertainty(to);
+    return edges + this.timeAccuracy * Math.abs(differenceTicks) + (from === to ? 0 : this.skewTicks);
+  }
+
+  /** Bound of the error of one edge, ticks: T/2, or the worst of the interpolated edges of a line in volts. */
+  edgeUncertainty(role: LineRole): number {
+    let worst = this.edgeBounds.get(role);
+    if (worst === undefined) {
+      worst = worstOf(this.decoded.lines[role]?.trace.edgeUncertainty) ?? this.decoded.resolutionTicks / 2;
+      this.edgeBounds.set(role, worst);
+    }
+    return worst;
+  }
+
+  /**
+   * Bound of the error of a voltage, volts: what the line map states, by default 3 % and 0.1 V. Source: rules.md 9 (house).
+   */
+  voltageUncertainty(volts: number): number {
+    const { voltageAccuracyPercent, voltageAccuracyV } = this.decoded.map;
+    const share = (voltageAccuracyPercent ?? DEFAULT_VOLTAGE_ACCURACY_PERCENT) / 100;
+    return share * Math.abs(volts) + (voltageAccuracyV ?? DEFAULT_VOLTAGE_ACCURACY_V);
   }
 
   /** Accuracy of the time base as a share. */
   get timeAccuracy(): number {
     return this.ppm * 1e-6;
-  }
-
-  /** Twice the largest error of an interpolated edge; undefined for digital lines. */
-  private get edgeUncertainty(): number | undefined {
-    const list = this.data?.edgeUncertainty;
-    if (list === undefined || list.length === 0) return undefined;
-    let worst = 0;
-    for (const value of list) if (value > worst) worst = value;
-    return 2 * worst;
   }
 
   ms(ticks: number): number {
@@ -150,6 +169,14 @@ export class RuleContext {
     for (let i = 0; i < count; i++) if (errors[i] === 0) whole += 1;
     return whole;
   }
+}
+
+/** The largest of a list; undefined without any. */
+function worstOf(list: Float32Array | undefined): number | undefined {
+  if (list === undefined || list.length === 0) return undefined;
+  let worst = 0;
+  for (const value of list) if (value > worst) worst = value;
+  return worst;
 }
 
 export function notShown(reason: string): RuleOutcome {

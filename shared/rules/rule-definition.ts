@@ -21,6 +21,6 @@ export interface RuleDefinition {
   readonly needs: string;
   /** Protocols the rule has a meaning for; undefined: all. */
   readonly protocols?: readonly Protocol[];
-  /** False: this version lists the rule but does not measure it yet. It then has no say in the overall verdict. */
+  /** False: no capture shows the rule, it comes from a sheet of the build. It then has no say in the verdict of a capture. */
   readonly isMeasured: boolean;
 }

@@ -14,6 +14,14 @@ export interface RuleSetting {
   readonly warningLimit?: number;
   /** Least number of resets, characters … the rule asks for. */
   readonly minimumCount?: number;
+  /** Of rules whose value must lie between two limits: the band at each end of the line that may be probed. */
+  readonly bands?: { readonly receiver: Band; readonly driver: Band };
+}
+
+/** Lowest and highest value allowed, in the unit of the rule. */
+export interface Band {
+  readonly from: number;
+  readonly to: number;
 }
 
 export interface Rulebook {

@@ -62,7 +62,7 @@ export function worseOf(a: Verdict, b: Verdict): Verdict {
 
 /**
  * Any blocking violation: fail. Else any blocking inconclusive or not-shown, or a defect of the capture: inconclusive. Else pass.
- * Rules this version does not measure have no say. Source: rules.md 1.
+ * Rules that no capture shows have no say. Source: rules.md 1.
  */
 export function overallVerdict(
   rules: readonly RuleResult[],
