@@ -1,9 +1,11 @@
 import { createHash } from 'node:crypto';
 import { createReadStream } from 'node:fs';
 import { CaptureError } from '#shared/capture/capture-error';
-import type { Capture } from '#shared/capture/capture';
+import type { Capture, Defect } from '#shared/capture/capture';
 import { CaptureReader } from '#shared/capture/read-capture';
 import type { CaptureReaderOptions } from '#shared/capture/read-capture';
+import { unpack } from '../storage/unpack';
+import { watchedChunks } from '../storage/watched-chunks';
 import { UsageError } from './usage-error';
 
 const CHUNK = 1 << 20;
@@ -15,7 +17,7 @@ export interface ReadFile {
 }
 
 /**
- * Streams a capture file through a reader, hashing it on the way.
+ * Streams a capture file through a reader, hashing it on the way; one packed by gzip is unpacked. Hash and length are the file's.
  * @throws UsageError in one line, with file, place and reason
  */
 export async function readCaptureFile(path: string, options: CaptureReaderOptions): Promise<ReadFile> {
@@ -23,12 +25,19 @@ export async function readCaptureFile(path: string, options: CaptureReaderOption
   const hash = createHash('sha256');
   let bytes = 0;
   try {
-    for await (const chunk of createReadStream(path, { highWaterMark: CHUNK }) as AsyncIterable<Buffer>) {
+    const defects: Defect[] = [];
+    const stream = createReadStream(path, { highWaterMark: CHUNK }) as AsyncIterable<Buffer>;
+    const counted = watchedChunks(stream, (chunk) => {
       hash.update(chunk);
       bytes += chunk.length;
-      reader.push(chunk);
-    }
-    return { capture: reader.finish(), sha256: hash.digest('hex'), bytes };
+    });
+    for await (const chunk of unpack(counted, (defect) => defects.push(defect))) reader.push(chunk);
+    const capture = reader.finish();
+    return {
+      capture: { ...capture, defects: [...capture.defects, ...defects] },
+      sha256: hash.digest('hex'),
+      bytes,
+    };
   } catch (error) {
     if (error instanceof CaptureError) {
       const where = error.where === '' ? '' : `${error.where}: `;

@@ -1,7 +1,9 @@
 import { createReadStream } from 'node:fs';
-import type { Capture } from '#shared/capture/capture';
+import type { Capture, Defect } from '#shared/capture/capture';
 import { CaptureReader } from '#shared/capture/read-capture';
 import type { LineMap } from '#shared/line/line-map';
+import { unpack } from '../storage/unpack';
+import { watchedChunks } from '../storage/watched-chunks';
 import type { SourceFile } from './worker-task';
 
 const CHUNK = 1 << 20;
@@ -20,7 +22,7 @@ export interface ReadingOptions {
 }
 
 /**
- * Reads a stored capture.
+ * Reads a stored capture, unpacked where it is packed by gzip.
  * @throws CaptureError where nothing in the file can be used
  * @throws BudgetError where it does not fit into the memory
  */
@@ -28,14 +30,16 @@ export async function readSource(file: SourceFile, options: ReadingOptions): Pro
   const { sampleRateHz, map, memoryBudget, onShare } = options;
   const reader = new CaptureReader({ sampleRateHz, keep: channelsOf(map) });
   let read = 0;
-  const stream = createReadStream(file.path, { highWaterMark: CHUNK });
-  for await (const chunk of stream as AsyncIterable<Buffer>) {
+  const defects: Defect[] = [];
+  const stream = createReadStream(file.path, { highWaterMark: CHUNK }) as AsyncIterable<Buffer>;
+  const counted = watchedChunks(stream, (chunk) => (read += chunk.length));
+  for await (const chunk of unpack(counted, (defect) => defects.push(defect))) {
     reader.push(chunk);
-    read += chunk.length;
     refuseOverBudget(memoryBudget);
     onShare?.(read / Math.max(1, file.size));
   }
-  return reader.finish();
+  const capture = reader.finish();
+  return defects.length === 0 ? capture : { ...capture, defects: [...capture.defects, ...defects] };
 }
 
 /** Limits of the thread count its heap only; the edges lie in array buffers, which Node counts for each thread by itself. */

@@ -1,6 +1,7 @@
 import { Transform } from 'node:stream';
 import { findCharacterSet, findKind, SNIFFED_BYTES } from '#shared/capture/sniff';
 import { Utf16Transcoder } from '#shared/capture/utf16';
+import { isGzip } from './unpack';
 
 /** Passes a stream on, and breaks it off with a `CaptureError` where its first bytes are those of something that is no capture. */
 export function checkHead(): Transform {
@@ -10,6 +11,8 @@ export function checkHead(): Transform {
   const judge = (): void => {
     isJudged = true;
     const head = Buffer.concat(seen).subarray(0, SNIFFED_BYTES);
+    // What is packed shows when it is read.
+    if (isGzip(head)) return;
     const set = findCharacterSet(head);
     findKind(set === 'bytes' ? head : new Utf16Transcoder(set === 'utf-16le').convert(head));
   };

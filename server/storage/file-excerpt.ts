@@ -1,5 +1,6 @@
 import { createReadStream } from 'node:fs';
 import type { Excerpt, Place } from '#shared/contract/http/problem';
+import { unpack } from './unpack';
 
 const LINES_AROUND = 1;
 const LONGEST_LINE = 200;
@@ -14,8 +15,13 @@ export async function readExcerpt(path: string, place: Place): Promise<Excerpt |
   const lines: string[] = [];
   let number = 1;
   let line = '';
-  const stream = createReadStream(path, { encoding: 'utf8', highWaterMark: 1 << 18, end: FARTHEST_BYTE });
-  for await (const chunk of stream as AsyncIterable<string>) {
+  const stream = createReadStream(path, {
+    highWaterMark: 1 << 18,
+    end: FARTHEST_BYTE,
+  }) as AsyncIterable<Buffer>;
+  const text = new TextDecoder();
+  for await (const bytes of unpack(stream, () => undefined)) {
+    const chunk = text.decode(bytes, { stream: true });
     let from = 0;
     for (let end = chunk.indexOf('\n'); end >= 0; end = chunk.indexOf('\n', from)) {
       if (number >= first)

@@ -1,8 +1,10 @@
 import { spawnSync } from 'node:child_process';
-import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { createHash } from 'node:crypto';
+import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
+import { gzipSync } from 'node:zlib';
 import { afterAll, describe, expect, it } from 'vitest';
 import { decodeResultSchema } from '#shared/contract/decode-result';
 
@@ -41,6 +43,17 @@ describe('decode', () => {
     expect(result.resets[0]).toMatchObject({ t: 0.18, replyT: 0.194, latencyS: 0.014, identity: 'M' });
     // A device at exactly its limit is inconclusive, whatever the doubles say.
     expect(result.rules.find(({ id }) => id === 'HSK-1')?.verdict).toBe('inconclusive');
+  });
+
+  it('reads a file packed by gzip as the file in it; name, length and hash are those of the packed one', () => {
+    const plain = readFileSync(join(ROOT, 'spec/captures/01_nominal_m.vcd'));
+    const packed = gzipSync(plain);
+    const path = file('nominal.vcd.gz', packed);
+    const result = decodeResultSchema.parse(JSON.parse(run('decode', path).out));
+    const other = decodeResultSchema.parse(JSON.parse(run('decode', 'spec/captures/01_nominal_m.vcd').out));
+    expect(result.capture.sha256).toBe(createHash('sha256').update(packed).digest('hex'));
+    expect(result.capture.bytes).toBe(packed.length);
+    expect({ ...result, capture: null }).toEqual({ ...other, capture: null });
   });
 
   it('exits with 1 where a blocking rule is violated, and with --strict where one is open', () => {
