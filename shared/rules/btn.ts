@@ -52,7 +52,7 @@ export function judgeBounce(context: RuleContext): RuleOutcome {
         endTicks: to,
         measured: context.ms(to - from),
         uncertainty: context.ms(uncertainty),
-        limit: context.ms(limit),
+        limit: limit === fastest ? context.limit : context.ms(limit),
         message: `The ${name} button changes twice within ${figure(context.ms(to - from))} ms: possibly bounce`,
       });
     }
@@ -65,7 +65,7 @@ export function judgeBounce(context: RuleContext): RuleOutcome {
     measured: context.ms(closest.apart),
     uncertainty: context.ms(context.differenceUncertainty(closest.apart, 'data')),
     uncertaintyKind: 'bound',
-    limit: context.ms(closest.limit),
+    limit: closest.limit === fastest ? context.limit : context.ms(closest.limit),
     reason: `the closest of ${plural(pairs, 'pair')} of changes are ${figure(context.ms(closest.apart))} ms apart; ${suspects} may be bounce`,
     findings: cap(places.map((place) => context.finding(place))),
   };

@@ -1,16 +1,14 @@
 import { countUpTo, holdsLevel, levelAt, reachesLevel } from '../line/level-at';
 import { MARK, OFF, ON, UNKNOWN } from '../line/level-trace';
 import { BREAK_ERROR } from '../characters/character-table';
-import { REPLY_WINDOW_S } from '../resets/find-resets';
-import type { Reset } from '../resets/reset';
-import { performanceIndex } from '../statistics/performance-index';
-import type { PerformanceIndex } from '../statistics/performance-index';
+import type { ControlEvent, Reset } from '../resets/reset';
 import { poissonUpperBound } from '../statistics/poisson';
-import { wilsonInterval } from '../statistics/wilson';
 import type { Span } from '../time/ticks';
+import { countMisses, findMisses, splitLatencies } from './hsk-counts';
+import { judgeLatencies, judgeMisses } from './pooled';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
 import { cap, figure, notApplicable, notShown, plural, worstVerdict } from './rule-context';
-import { judgeAtLeast, judgeAtMost, judgeCount, worseOf } from './verdict';
+import { judgeAtLeast, judgeAtMost, judgeCount } from './verdict';
 
 const NO_RTS = 'RTS is not in the capture: record RTS beside the data line';
 const NO_DATA = 'the data line is not in the capture';
@@ -221,43 +219,20 @@ export function judgeMissingReplies(context: RuleContext): RuleOutcome {
   const missing = lacks(context);
   if (missing !== undefined) return missing;
   if (!context.isMFamily) return notApplicable(NO_IDENTIFICATION);
-  const fullWindow = REPLY_WINDOW_S * context.perSecond;
-  const places: Place[] = [];
-  let n = 0;
-  let silent = 0;
-  let undecided = 0;
-  for (const reset of context.decoded.resets) {
-    if (reset.isWindowCut) continue;
-    n += 1;
-    if (reset.replyTicks !== null) continue;
+  const { misses } = findMisses(context.decoded);
+  const places = misses.map(({ reset, isShort }): Place => {
     const window = reset.windowEndTicks - reset.onTicks;
-    const isShort = window < fullWindow - context.decoded.resolutionTicks;
-    if (isShort) undecided += 1;
-    else silent += 1;
-    places.push({
+    return {
       verdict: isShort ? 'inconclusive' : 'violation',
       startTicks: reset.onTicks,
       endTicks: reset.windowEndTicks,
       message: isShort
         ? `No reply before RTS went OFF again after ${figure(context.ms(window), 1)} ms`
         : 'No reply within 200 ms of RTS going ON',
-    });
-  }
-  const least = context.setting.minimumCount ?? 1;
-  if (n < least) {
-    const lack = `${plural(n, 'reset')} with a whole reply window; the rulebook asks for ${least}`;
-    // A miss is a miss, however few the resets.
-    if (judgeCount(silent, undecided, context.limit) !== 'violation') return { ...notShown(lack), n };
-  }
-  const answered = n - silent - undecided;
-  const share = wilsonInterval(answered, n);
+    };
+  });
   return {
-    verdict: judgeCount(silent, undecided, context.limit),
-    n,
-    measured: silent,
-    uncertainty: undecided,
-    uncertaintyKind: 'bound',
-    reason: `${answered} of ${plural(n, 'reset')} were answered; the true share is ${figure(100 * share.lower, 1)} % or more (95 %, Wilson)`,
+    ...judgeMisses(countMisses(context.decoded), context.setting),
     findings: cap(places.map((place) => context.finding(place))),
   };
 }
@@ -430,56 +405,11 @@ export function judgeLatencyIndex(context: RuleContext): RuleOutcome {
   if (isWithoutIdentification(context)) return notApplicable(NO_IDENTIFICATION);
   const upperLimit = context.settings.get('HSK-1')?.limit ?? null;
   if (upperLimit === null) return notShown('the rulebook sets no limit for HSK-1');
-  const least = context.setting.minimumCount ?? 25;
-  const kinds = [
-    { name: 'after power-up', of: (reset: Reset) => reset.isPowerUp === true },
-    { name: 'while powered', of: (reset: Reset) => reset.isPowerUp !== true },
-  ].map(({ name, of }) => ({
-    name,
-    latencies: context.decoded.resets
-      .filter((reset) => reset.replyTicks !== null && of(reset))
-      .map((reset) => context.ms(reset.replyTicks! - reset.onTicks)),
-  }));
-  const enough = kinds.filter((kind) => kind.latencies.length >= least);
-  if (enough.length === 0) {
-    const most = Math.max(...kinds.map((kind) => kind.latencies.length));
-    return notShown(`${plural(most, 'answered reset')} of one kind; ${least} are needed`);
-  }
+  const { powerUp, powered } = splitLatencies(context.decoded.resets);
+  const toMs = (list: readonly number[]): number[] => list.map((ticks) => context.ms(ticks));
   const resolution = context.ms(context.decoded.resolutionTicks);
-  const indexes = enough.map((kind) => ({
-    ...kind,
-    index: performanceIndex(kind.latencies, upperLimit, resolution),
-  }));
-  const judged = indexes.map((kind) => judgeIndex(context, kind.name, kind.latencies.length, kind.index));
-  return judged.reduce((a, b) => (worseOf(a.verdict, b.verdict) === a.verdict ? a : b));
-}
-
-function judgeIndex(
-  context: RuleContext,
-  kind: string,
-  n: number,
-  index: PerformanceIndex | undefined,
-): RuleOutcome {
-  if (index === undefined) {
-    return {
-      verdict: 'inconclusive',
-      n,
-      reason: `the spread of the latency ${kind} is not wider than the resolution`,
-    };
-  }
-  const { value, half, isNormalityDoubtful } = index;
-  return {
-    verdict: judgeAtLeast(value, half, context.limit, context.setting.decision),
-    n,
-    measured: value,
-    uncertainty: half,
-    uncertaintyKind: 'k2',
-    reason:
-      `Ppu ${figure(value)}, 95 % interval ${figure(value - half)} to ${figure(value + half)}, of ${plural(n, 'reset')} ${kind}` +
-      (isNormalityDoubtful
-        ? '; the latencies do not look normally distributed, so the index says little about the share beyond the limit'
-        : ''),
-  };
+  const latencies = { powerUp: toMs(powerUp), powered: toMs(powered) };
+  return judgeLatencies(latencies, resolution, upperLimit, context.setting);
 }
 
 /** HSK-11: first character complete in time and no long pause: meets the timing of every host listed. */
@@ -573,21 +503,25 @@ export function judgeDsr(context: RuleContext): RuleOutcome {
   if (events.length === 0) {
     return notShown('no change of DTR is followed by 10 ms in which DTR stays and DSR is known');
   }
-  const late = events.filter((event) => levelAt(dsr, event.ticks + follows) !== (event.isOn ? ON : OFF));
+  const doubt = context.differenceUncertainty(follows, 'dtr', 'dsr');
+  const hasFollowed = (event: ControlEvent, at: number): boolean =>
+    levelAt(dsr, event.ticks + at) === (event.isOn ? ON : OFF);
+  const places = events
+    .filter((event) => !hasFollowed(event, follows - doubt))
+    .map((event): Place => {
+      const isLate = !hasFollowed(event, follows + doubt);
+      return {
+        verdict: isLate ? 'violation' : 'inconclusive',
+        startTicks: event.ticks,
+        endTicks: event.ticks + follows,
+        message: `DTR went ${event.isOn ? 'ON' : 'OFF'}, DSR ${isLate ? 'did not follow within 10 ms' : 'followed after 10 ms, as far as the resolution tells'}`,
+      };
+    });
   return {
-    verdict: late.length === 0 ? 'pass' : 'violation',
+    verdict: worstVerdict(places, 'pass'),
     n: events.length,
-    reason: `DSR followed ${events.length - late.length} of ${plural(events.length, 'change')} of DTR within 10 ms`,
-    findings: cap(
-      late.map((event) =>
-        context.finding({
-          verdict: 'violation',
-          startTicks: event.ticks,
-          endTicks: event.ticks + follows,
-          message: `DTR went ${event.isOn ? 'ON' : 'OFF'}, DSR did not follow within 10 ms`,
-        }),
-      ),
-    ),
+    reason: `DSR followed ${events.length - places.length} of ${plural(events.length, 'change')} of DTR within 10 ms`,
+    findings: cap(places.map((place) => context.finding(place))),
   };
 }
 

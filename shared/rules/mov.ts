@@ -1,8 +1,8 @@
 import type { DeclaredSpan } from '../line/line-map';
 import type { Decoded } from '../decode/decoded';
 import { poissonUpperBound } from '../statistics/poisson';
-import { wilsonInterval } from '../statistics/wilson';
 import { toTicks } from '../time/time-base';
+import { judgeSaturatedShare } from './pooled';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
 import { cap, figure, notShown, plural, worstVerdict } from './rule-context';
 import { DEFAULT_EXPOSURE, judgeAtMost, judgeCount } from './verdict';
@@ -13,31 +13,22 @@ const LIMIT_COUNTS = 127;
 const WRAP_STEP = 100;
 const MM_PER_INCH = 25.4;
 
-/** MOV-1: share of moving packets with an axis at its numeric limit, in percent. */
-export function judgeSaturation(context: RuleContext): RuleOutcome {
-  const { packets, protocol } = context.decoded;
+/** Moving packets, and those with an axis at its numeric limit. */
+export function countSaturated({ packets, protocol }: Decoded): { n: number; saturated: number } {
   const ceiling = protocol === 'five-byte' ? 2 * LIMIT_COUNTS : LIMIT_COUNTS;
-  let moving = 0;
+  let n = 0;
   let saturated = 0;
   for (let p = 0; p < packets.count; p++) {
     if (packets.dx[p] === 0 && packets.dy[p] === 0) continue;
-    moving += 1;
+    n += 1;
     if (Math.abs(packets.dx[p]) >= ceiling || Math.abs(packets.dy[p]) >= ceiling) saturated += 1;
   }
-  const least = context.setting.minimumCount ?? 100;
-  if (moving < least) {
-    return { ...notShown(`${plural(moving, 'moving packet')}; ${least} are needed`), n: moving };
-  }
-  const share = (100 * saturated) / moving;
-  const interval = wilsonInterval(saturated, moving);
-  return {
-    verdict: judgeAtMost(share, 0, context.limit, context.setting.decision),
-    n: moving,
-    measured: share,
-    uncertainty: 0,
-    uncertaintyKind: 'bound',
-    reason: `${saturated} of ${plural(moving, 'moving packet')} are at the numeric limit; the true share is ${figure(100 * interval.lower, 1)} to ${figure(100 * interval.upper, 1)} % (95 %, Wilson)`,
-  };
+  return { n, saturated };
+}
+
+/** MOV-1: share of moving packets with an axis at its numeric limit, in percent. */
+export function judgeSaturation(context: RuleContext): RuleOutcome {
+  return judgeSaturatedShare(countSaturated(context.decoded), context.setting);
 }
 
 /** MOV-2: suspected wrap of a counter. */

@@ -1,5 +1,7 @@
 import { findMotionRuns } from '../packets/motion-runs';
 import type { MotionRun } from '../packets/motion-runs';
+import { sumRuns } from './group-figures';
+import { judgePooledUse } from './pooled';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
 import { cap, figure, notShown, plural, worstVerdict } from './rule-context';
 import { judgeAtLeast, judgeAtMost } from './verdict';
@@ -14,20 +16,15 @@ function runsOf(context: RuleContext): MotionRun[] {
   return findMotionRuns(packets, characters, characterTicks, context.perSecond);
 }
 
-/** RPT-1: line use inside motion runs, percent; pooled over runs, the worst named. */
+/** RPT-1: line use inside motion runs, percent; pooled over runs, the worst ones listed. */
 export function judgeLineUse(context: RuleContext): RuleOutcome {
-  const runs = runsOf(context);
-  if (runs.length === 0) return notShown(NO_RUN);
-  const { characters, packets } = context.decoded;
-  const length = (run: MotionRun): number =>
-    characters.startTicks[packets.firstCharacter[run.lastPacket]] - run.startTicks;
-  const total = runs.reduce((sum, run) => sum + length(run), 0);
-  const use = (100 * runs.reduce((sum, run) => sum + run.lineUse * length(run), 0)) / total;
-  const rate = runs.reduce((sum, run) => sum + run.packetRate * length(run), 0) / total;
-  const uncertainty = use * (context.timeAccuracy + context.decoded.resolutionTicks / total);
-  const places: Place[] = runs
+  const outcome = judgePooledUse(sumRuns(context.decoded), context.setting);
+  // The pool decides; single strokes are shown where it does not pass.
+  if (outcome.verdict === 'pass' || outcome.verdict === 'not-shown') return outcome;
+  const { uncertainty } = outcome;
+  const places: Place[] = runsOf(context)
     .map((run) => ({
-      verdict: judgeAtLeast(100 * run.lineUse, uncertainty, context.limit, context.setting.decision),
+      verdict: judgeAtLeast(100 * run.lineUse, uncertainty ?? 0, context.limit, context.setting.decision),
       startTicks: run.startTicks,
       endTicks: run.endTicks,
       measured: 100 * run.lineUse,
@@ -35,17 +32,7 @@ export function judgeLineUse(context: RuleContext): RuleOutcome {
       message: `The line is in use ${figure(100 * run.lineUse, 1)} % of this stroke, ${figure(run.packetRate, 1)} packets a second`,
     }))
     .filter((place) => place.verdict !== 'pass');
-  const verdict = judgeAtLeast(use, uncertainty, context.limit, context.setting.decision);
-  return {
-    verdict,
-    n: runs.length,
-    measured: use,
-    uncertainty,
-    uncertaintyKind: 'bound',
-    reason: `${figure(use, 1)} % of the line in use over ${plural(runs.length, 'stroke')}, ${figure(rate, 1)} packets a second`,
-    // The pool decides; single strokes are shown where it does not pass.
-    findings: verdict === 'pass' ? [] : cap(places.map((place) => context.finding(place))),
-  };
+  return { ...outcome, findings: cap(places.map((place) => context.finding(place))) };
 }
 
 /** RPT-3: longest start-to-start inside a run, in packet times. */

@@ -16,25 +16,13 @@ import type { RuleSetting, Severity } from './rulebook';
 import type { Judgement } from './verdict';
 import { worseOf } from './verdict';
 
+export { figure, notApplicable, notShown, plural } from './outcome';
+export type { RuleOutcome } from './outcome';
+
 /** Findings kept per rule: more help nobody; the counts stay exact. */
 export const MOST_FINDINGS = 1000;
 /** Places gathered per rule before the worst of them become findings: memory stays bounded, the counts exact. */
 export const MOST_PLACES = 2000;
-
-/** What a rule came to. */
-export interface RuleOutcome {
-  readonly verdict: Verdict;
-  readonly n: number;
-  readonly measured?: number;
-  readonly uncertainty?: number;
-  readonly uncertaintyKind?: UncertaintyKind;
-  /** The limit compared with, where it is not the setting's. */
-  readonly limit?: number;
-  /** Severity of what was crossed, where a rule has two limits. */
-  readonly severity?: Severity;
-  readonly reason: string;
-  readonly findings?: readonly Finding[];
-}
 
 /** One judged place before it becomes a `Finding`. */
 export interface Place {
@@ -179,14 +167,6 @@ function worstOf(list: Float32Array | undefined): number | undefined {
   return worst;
 }
 
-export function notShown(reason: string): RuleOutcome {
-  return { verdict: 'not-shown', n: 0, reason };
-}
-
-export function notApplicable(reason: string): RuleOutcome {
-  return { verdict: 'not-applicable', n: 0, reason };
-}
-
 /** The worst verdict of places, `fallback` without any. */
 export function worstVerdict(
   places: readonly { readonly verdict: Verdict | Judgement }[],
@@ -195,16 +175,6 @@ export function worstVerdict(
   return places.length === 0
     ? fallback
     : places.reduce<Verdict>((worst, place) => worseOf(worst, place.verdict), 'not-applicable');
-}
-
-/** A number for a message: at most `digits` after the point, no trailing zeros beyond two. */
-export function figure(value: number, digits = 2): string {
-  return value.toFixed(digits);
-}
-
-/** `1 reset`, `3 resets`. */
-export function plural(count: number, singular: string, several = `${singular}s`): string {
-  return `${count} ${count === 1 ? singular : several}`;
 }
 
 /** Findings of violations first where the cap bites. */
