@@ -34,6 +34,10 @@ test('mapping and devices fit a phone', async ({ page }) => {
   await row.getByRole('button', { name: 'Map the lines' }).click();
   await expect(page.getByRole('heading', { name: 'Map the lines' })).toBeVisible();
   await expect(page.getByText('With this mapping')).toBeVisible();
+  // A drawer is a page of its own here.
+  const box = await page.locator('lw-map-drawer').boundingBox();
+  expect(box).toMatchObject({ x: 0, y: 0, width: 390 });
+  expect(box!.height).toBeGreaterThan(700);
   await expectNoSideways(page);
   await expectAccessible(page);
   await page.goto('/devices');
