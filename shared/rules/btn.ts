@@ -7,7 +7,7 @@ import {
 } from '../packets/packet-table';
 import { findButtonChanges } from '../packets/button-changes';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
-import { cap, figure, notApplicable, notShown, plural } from './rule-context';
+import { cap, figure, MOST_PLACES, notApplicable, notShown, plural } from './rule-context';
 import type { Judgement } from './verdict';
 import { judgeAtLeast, worseOf } from './verdict';
 
@@ -46,6 +46,7 @@ export function judgeBounce(context: RuleContext): RuleOutcome {
         closest = { apart: to - from, limit };
       if (judged === 'pass') continue;
       suspects += 1;
+      if (places.length >= MOST_PLACES) continue;
       places.push({
         verdict: judged,
         startTicks: from,

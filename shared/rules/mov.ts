@@ -4,7 +4,7 @@ import { poissonUpperBound } from '../statistics/poisson';
 import { toTicks } from '../time/time-base';
 import { judgeSaturatedShare } from './pooled';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
-import { cap, figure, notShown, plural, worstVerdict } from './rule-context';
+import { cap, figure, MOST_PLACES, notShown, plural, worstVerdict } from './rule-context';
 import { DEFAULT_EXPOSURE, judgeAtMost, judgeCount } from './verdict';
 
 /** Largest step a protocol can say per axis: 127 or 128 counts, twice that in five-byte packets. */
@@ -37,6 +37,7 @@ export function judgeWrap(context: RuleContext): RuleOutcome {
   if (packets.count < 2) return notShown('fewer than two packets in the capture');
   const least = context.setting.minimumCount ?? DEFAULT_EXPOSURE;
   const places: Place[] = [];
+  let count = 0;
   for (let p = 1; p < packets.count; p++) {
     const isWrap = (a: number, b: number): boolean =>
       Math.abs(a) >= WRAP_STEP && Math.abs(b) >= WRAP_STEP && Math.sign(a) !== Math.sign(b);
@@ -44,6 +45,8 @@ export function judgeWrap(context: RuleContext): RuleOutcome {
     const from = characters.startTicks[packets.firstCharacter[p - 1]];
     const to = characters.startTicks[packets.firstCharacter[p]];
     if (to - from > 1.2 * packets.characterCount[p - 1] * context.characterTicks) continue;
+    count += 1;
+    if (places.length >= MOST_PLACES) continue;
     places.push({
       verdict: 'violation',
       startTicks: from,
@@ -51,11 +54,11 @@ export function judgeWrap(context: RuleContext): RuleOutcome {
       message: `Steps of (${packets.dx[p - 1]}, ${packets.dy[p - 1]}) and (${packets.dx[p]}, ${packets.dy[p]}) follow each other: a counter may have wrapped`,
     });
   }
-  const verdict = judgeCount(places.length, 0, context.limit);
+  const verdict = judgeCount(count, 0, context.limit);
   if (verdict === 'pass' && characters.count < least) {
     return {
       ...notShown(
-        `${plural(places.length, 'suspected wrap')} in ${plural(characters.count, 'character')}; ${least} are needed to call that a pass`,
+        `${plural(count, 'suspected wrap')} in ${plural(characters.count, 'character')}; ${least} are needed to call that a pass`,
       ),
       n: packets.count,
     };
@@ -63,10 +66,10 @@ export function judgeWrap(context: RuleContext): RuleOutcome {
   return {
     verdict,
     n: packets.count,
-    measured: places.length,
+    measured: count,
     uncertainty: 0,
     uncertaintyKind: 'bound',
-    reason: `${plural(places.length, 'suspected wrap')} in ${plural(packets.count, 'packet')}`,
+    reason: `${plural(count, 'suspected wrap')} in ${plural(packets.count, 'packet')}`,
     findings: cap(places.map((place) => context.finding(place))),
   };
 }

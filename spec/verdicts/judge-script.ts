@@ -1,3 +1,4 @@
+import type { Capture } from '#shared/capture/capture';
 import { CaptureReader } from '#shared/capture/read-capture';
 import { compose } from '#shared/composer/compose';
 import type { VoltsLayout } from '#shared/composer/line-voltage';
@@ -45,12 +46,18 @@ function withLimits(limits: Readonly<Record<string, number>>): Rulebook {
   };
 }
 
-/** Script → file → decode → check, as a user's file would go. */
-export function checkRecorded({ script, kind, map, options, limits }: Recorded): CheckResult {
+/** The script as the file it becomes, read back. */
+export function captureOf({ script, kind }: Recorded): Capture {
   const reader = new CaptureReader();
   const encoder = new TextEncoder();
   for (const piece of piecesOf(script, kind ?? { unitNs: 1000 })) reader.push(encoder.encode(piece));
-  return check(decode(reader.finish(), map, options), withLimits(limits ?? {}));
+  return reader.finish();
+}
+
+/** Script → file → decode → check, as a user's file would go. */
+export function checkRecorded(recorded: Recorded): CheckResult {
+  const { map, options, limits } = recorded;
+  return check(decode(captureOf(recorded), map, options), withLimits(limits ?? {}));
 }
 
 export function rulesOf(recorded: Recorded): ReadonlyMap<string, RuleResult> {
