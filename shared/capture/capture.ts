@@ -1,3 +1,4 @@
+import type { ByteLog } from './byte-log';
 import type { Span, Ticks } from '../time/ticks';
 import type { TimeBase } from '../time/time-base';
 
@@ -61,14 +62,6 @@ export interface Defect {
   readonly message: string;
 }
 
-/** A byte as an adapter's log states it: whole, with a time stamp at best. */
-export interface LoggedByte {
-  readonly ticks: Ticks;
-  readonly value: number;
-  /** `device`: device → host. */
-  readonly from: 'device' | 'host';
-}
-
 /** What a capture file holds, free of its format. */
 export interface Capture {
   readonly format: 'vcd' | 'csv' | 'bytes';
@@ -87,6 +80,6 @@ export interface Capture {
   /** Stretches where the recording was switched off: nothing is known there. */
   readonly gaps: readonly Span[];
   readonly defects: readonly Defect[];
-  /** Only for `bytes`. */
-  readonly log: readonly LoggedByte[];
+  /** Only for `bytes`, which have no channels; else null. */
+  readonly log: ByteLog | null;
 }

@@ -1,4 +1,6 @@
+import { CalendarClock, isClockText, isDateText } from './calendar-clock';
 import { HIGH, LOW, UNKNOWN } from './capture';
+import { plainNumber } from './number-text';
 
 /** What a column of a file holds. */
 export interface CsvColumn {
@@ -11,13 +13,17 @@ export interface CsvColumn {
 
 /** Where the time of a row comes from. */
 export type TimeSource =
-  /** A column of times; `places`: 3 for milliseconds; null where no unit is stated. `usualStep`: from row to row, in its unit. */
+  /**
+   * A column of times; `places`: 3 for milliseconds; null where no unit is stated. `usualStep`: from row to row, in its unit.
+   * `isClock`: written as times of day.
+   */
   | {
       readonly kind: 'column';
       readonly index: number;
       readonly places: number | null;
       readonly isInteger: boolean;
       readonly usualStep: number;
+      readonly isClock: boolean;
     }
   /** A column that counts samples. */
   | { readonly kind: 'counts'; readonly index: number }
@@ -76,7 +82,7 @@ export function levelOfText(text: string): number | undefined {
 const NUMBER = /^[+-]?(\d+([.,]\d*)?|[.,]\d+|\d{1,3}((,\d{3})+\.|(\.\d{3})+,)\d*)(e[+-]?\d+)?$/i;
 
 export function isNumberText(text: string): boolean {
-  return NUMBER.test(text);
+  return NUMBER.test(text) || NUMBER.test(plainNumber(text));
 }
 
 /** Decimal places of a time unit in seconds; undefined for a word that is none. */
@@ -103,7 +109,8 @@ function unitsOf(names: readonly string[], units: readonly string[]): string[] {
   return names.map((name, i) => (units[i] ?? '').replace(/[[\](){}]/g, '').trim().toLowerCase() || unitOfHeader(name)); // prettier-ignore
 }
 
-function toNumber(text: string): number {
+function toNumber(written: string): number {
+  const text = plainNumber(written);
   const isGrouped = text.includes(',') && text.includes('.');
   const plain = isGrouped ? text.replaceAll(text.indexOf(',') < text.indexOf('.') ? ',' : '.', '') : text;
   return plain === '' ? NaN : Number(plain.replace(',', '.'));
@@ -115,6 +122,9 @@ interface ColumnFacts {
   readonly isInteger: boolean;
   /** Whole numbers, each one more than the one before. */
   readonly isCounting: boolean;
+  /** Times of day, or dates without one. */
+  readonly isClock: boolean;
+  readonly isDate: boolean;
   /** All filled cells state levels. */
   readonly isDigital: boolean;
   readonly distinct: number;
@@ -129,15 +139,21 @@ function medianStep(numbers: readonly number[]): number {
 
 function lookAt(cells: readonly string[]): ColumnFacts {
   const filled = cells.filter((cell) => cell !== '');
-  const numbers = filled.filter(isNumberText).map(toNumber);
-  const falls = numbers.filter((value, i) => i > 0 && value < numbers[i - 1]).length;
-  const counts = numbers.filter((value, i) => i > 0 && value === numbers[i - 1] + 1).length;
+  const clock = new CalendarClock();
   // One damaged row among many must not hide what a column is.
   const isAlmostAll = (count: number): boolean => count >= Math.max(1, filled.length * 0.9);
+  const isClock = isAlmostAll(filled.filter(isClockText).length);
+  const numbers = isClock
+    ? filled.map((cell) => Number(clock.toSeconds(cell) ?? NaN)).filter((value) => !Number.isNaN(value))
+    : filled.filter(isNumberText).map(toNumber);
+  const falls = numbers.filter((value, i) => i > 0 && value < numbers[i - 1]).length;
+  const counts = numbers.filter((value, i) => i > 0 && value === numbers[i - 1] + 1).length;
   const isInteger = filled.length > 0 && numbers.every((value) => Number.isInteger(value));
   return {
     isRising: isAlmostAll(numbers.length) && falls <= numbers.length * 0.05,
     isInteger,
+    isClock,
+    isDate: isAlmostAll(filled.filter(isDateText).length),
     isCounting: isInteger && numbers.length > 2 && counts >= (numbers.length - 1) * 0.95,
     isDigital:
       filled.length === 0 || isAlmostAll(filled.filter((cell) => levelOfText(cell) !== undefined).length),
@@ -161,6 +177,7 @@ export function assignColumns(
   const skipped = new Set<number>();
   if (time.kind !== 'rows') skipped.add(time.index);
   names.forEach((name, i) => {
+    if (facts[i].isDate || facts[i].isClock) skipped.add(i);
     if (time.kind === 'column' && isCountColumn(name, facts[i])) skipped.add(i);
   });
   const channels = names
@@ -194,8 +211,14 @@ function findTime(
 ): TimeSource {
   const places = units.map(placesOfTimeUnit);
   const asColumn = (index: number): TimeSource => ({
-    kind: 'column', index, places: places[index] ?? null, isInteger: facts[index].isInteger, usualStep: facts[index].usualStep,
-  }); // prettier-ignore
+    kind: 'column',
+    index,
+    places: facts[index].isClock ? 0 : (places[index] ?? null),
+    isInteger: facts[index].isInteger,
+    usualStep: facts[index].usualStep,
+    isClock: facts[index].isClock,
+  });
+  const clock = facts.findIndex(({ isClock }) => isClock);
   const words = names.map(wordsOfHeader);
   const isSpelledOut = (i: number): boolean =>
     words[i].some((word) => TIME_WORDS.has(word) && word.length > 3);
@@ -207,6 +230,7 @@ function findTime(
     (places[i] !== undefined && (words[i].length <= 2 || names[i].includes('(') || names[i].includes('[')));
   const named = names.findIndex((name, i) => isTimeName(i) && mayBeTime(i) && !isOnlyCount(words[i]));
   if (named >= 0) return asColumn(named);
+  if (clock >= 0) return asColumn(clock);
   const counted = names.findIndex((name, i) => name !== '' && isCountColumn(name, facts[i]));
   if (counted >= 0) return { kind: 'counts', index: counted };
   if (!mayBeTime(0)) {

@@ -1,3 +1,4 @@
+import { isClockText, isDateText } from './calendar-clock';
 import { CaptureError } from './capture-error';
 import type { CsvColumns } from './csv-columns';
 import { assignColumns, isNumberText, levelOfText, placesOfTimeUnit } from './csv-columns';
@@ -48,6 +49,8 @@ function isDataCell(cell: string): boolean {
     cell === '' ||
     isNumberText(cell) ||
     levelOfText(cell) !== undefined ||
+    isClockText(cell) ||
+    isDateText(cell) ||
     /^[+-]?(inf(inity)?|nan)$/i.test(cell)
   );
 }

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { secondsPerTick, toSeconds } from '../time/time-base';
 import type { Capture } from './capture';
-import { analogOf, defectsOf, digitalOf, edgesOf, readText, refusalOf } from './spec-texts';
+import { analogOf, defectsOf, digitalOf, edgesOf, readBytes, readText, refusalOf } from './spec-texts';
 
 /** Rows of a table: times with levels of the channels, joined by `separator`. */
 const ROWS: readonly (readonly [string, number, number])[] = [
@@ -24,8 +24,7 @@ function table(
 /** Edges in µs from the first row, whatever the tick. */
 function edgesUs(capture: Capture, name: string): string {
   const { initialLevel, ticks, levels } = digitalOf(capture, name);
-  const us = (tick: number): number =>
-    Math.round((toSeconds(capture.timeBase, tick) - toSeconds(capture.timeBase, 0)) * 1e9) / 1e3;
+  const us = (tick: number): number => Math.round(tick * secondsPerTick(capture.timeBase) * 1e9) / 1e3;
   return [`${initialLevel}`, ...Array.from(ticks, (tick, i) => `${levels[i]}@${us(tick)}`)].join(' ');
 }
 
@@ -190,6 +189,8 @@ describe('the time column', () => {
     const late = readText('time,a\n1700000000.123456,1\n1700000000.123556,0\n1700000000.1236561,1\n');
     expect(edgesOf(late, 'a')).toBe('1 0@1000 1@2001');
     expect(secondsPerTick(late.timeBase)).toBe(1e-7);
+    const microseconds = readText('time,a\n1700000000.000001,1\n1700000000.000004,0\n1700000000.000008,1\n');
+    expect(edgesOf(microseconds, 'a')).toBe('1 0@3 1@7');
     const nanoseconds = readText('time_ns,a\n1700000000123456789,1\n1700000000123456790,0\n');
     expect(edgesOf(nanoseconds, 'a')).toBe('1 0@1');
     expect(nanoseconds.timeBase.originUnits).toBe(1700000000123456789n);
@@ -318,10 +319,79 @@ describe('header and preamble', () => {
     ).toEqual(['RTS#', 'column 3', 'DTR (pin 4)']);
   });
 
+  // Source: ISO/IEC 8859-1 (B5 is the micro sign, E4 an a with diaeresis); rows beyond the header are ASCII.
   it('reads headers in Latin-1', () => {
-    const bytes = Uint8Array.from('Zeit (\u00b5s);M\u00e4rz\n0;1\n100;0\n200;1\n', (c) => c.charCodeAt(0));
-    const text = String.fromCharCode(...bytes);
-    expect(text).toHaveLength(bytes.length);
+    const text = 'Zeit (\u00b5s);M\u00e4rz\n0;1\n100;0\n200;1\n';
+    const capture = readBytes(Uint8Array.from(text, (c) => c.charCodeAt(0)));
+    expect(edgesUs(capture, 'M\u00e4rz')).toBe('1 0@100 1@200');
+    expect(capture.defects).toEqual([]);
+  });
+});
+
+describe('stamps of day and time', () => {
+  const stamped = (write: (seconds: string) => string): string =>
+    table('Zeit;a;b', (time, a, b) => `${write((30 + Number(time)).toFixed(4))};${a};${b}`);
+
+  // Source: ISO 8601 for year-first dates; the others are practice.
+  it.each([
+    ['2031-04-05T12:30:30.0000Z', (s: string) => `2031-04-05T12:30:${s}Z`],
+    ['2031-04-05 12:30:30.0000', (s: string) => `2031-04-05 12:30:${s}`],
+    ['05.04.2031 12:30:30,0000', (s: string) => `05.04.2031 12:30:${s.replace('.', ',')}`],
+    ['04/05/2031 12:30:30.0000 pm', (s: string) => `04/05/2031 12:30:${s} PM`],
+    ['12:30:30.0000', (s: string) => `12:30:${s}`],
+    ['12:30:30:0000', (s: string) => `12:30:${s.replace('.', ':')}`],
+    ['30:30.0000', (s: string) => `30:${s}`],
+  ])('are times: %s', (_, write) => {
+    expectRows(readText(stamped(write)));
+    expectRows(readText(stamped(write).replace('Zeit;a;b\n', '')), 'column 2', 'column 3');
+    expectRows(readText(stamped((s) => `"${write(s)}"`)));
+  });
+
+  it('tell the second since 1970', () => {
+    const capture = readText(
+      'time,a\n1970-01-02 00:00:00.25,1\n1970-01-02 00:00:01.25,0\n1970-01-02 00:00:02,1\n',
+    );
+    expect(toSeconds(capture.timeBase, 0)).toBe(86_400.25);
+    expect(edgesUs(capture, 'a')).toBe('1 0@1000000 1@1750000');
+  });
+
+  it('may have the date in a column of its own, and run past midnight', () => {
+    const capture = readText(
+      'Date,Time,a\n05.04.2031,23:59:59.9,1\n05.04.2031,23:59:59.95,0\n06.04.2031,00:00:00.1,1\n',
+    );
+    expect(capture.channels.map(({ name }) => name)).toEqual(['a']);
+    expect(edgesUs(capture, 'a')).toBe('1 0@50000 1@200000');
+  });
+
+  it('that are none leave their row out', () => {
+    const capture = readText(
+      'time,a\n12:00:00.0,1\n12:00:00.1,0\n12:61:00.2,1\n12:00:00.3,1\n12:00:00.4,0\n12:00:00.5,1\n12:00:00.6,0\n12:00:00.7,1\n12:00:00.8,1\n12:00:00.9,1\n12:00:01,1\n12:00:02,1\n',
+    );
+    expect(defectsOf(capture)).toEqual(['bad-time 4:1']);
+    expect(edgesOf(capture, 'a')).toBe('1 0@1 x@2 1@3 0@4 1@5 0@6 1@7');
+  });
+});
+
+describe('numbers of other lands', () => {
+  it.each([
+    ['a decimal comma behind tabs', 'Zeit\ta\n0,5\t1\n0,75\t0\n1\t1\n'],
+    ['a decimal comma and an exponent', 'Zeit;a\n5,0E-01;1\n7,5E-01;0\n1,0E+00;1\n'],
+    ['an apostrophe between thousands', "t [ms];a\n1'500.0;1\n1'750.0;0\n2'000.0;1\n"],
+    ['a blank between thousands', 't [ms];a\n1 500,0;1\n1 750,0;0\n2 000,0;1\n'],
+    ['a no-break space between thousands', 't [ms];a\n1\u00a0500,0;1\n1\u00a0750,0;0\n2\u00a0000,0;1\n'],
+    ['a narrow no-break space between thousands', 't [ms];a\n1\u202f500;1\n1\u202f750;0\n2\u202f000;1\n'],
+    ['a minus sign that is no hyphen', 'time,a\n\u22120.5,1\n\u22120.25,0\n0,1\n'],
+  ])('may have %s', (_, text) => {
+    const capture = readText(text);
+    expect(capture.defects).toEqual([]);
+    expect(edgesUs(capture, 'a')).toBe('1 0@250000 1@500000');
+  });
+
+  it('may be voltages with any of them', () => {
+    const capture = readText('t;K1 [mV]\n0;\u22121\u00a0500,5\n1;1\u00a0500,5\n2;\u22120,5\n');
+    expect([...analogOf(capture, 'K1 [mV]').values].map((v) => Math.round(v * 1e4))).toEqual([
+      -15005, 15005, -5,
+    ]);
   });
 });
 

@@ -1,3 +1,4 @@
+import { CalendarClock } from './calendar-clock';
 import type { Capture } from './capture';
 import { CaptureError } from './capture-error';
 import { CsvCells } from './csv-cells';
@@ -9,7 +10,7 @@ import type { Place } from './defect-list';
 import { DefectList } from './defect-list';
 import type { FormatReader, KeepRule } from './format-reader';
 import type { SampleInterval } from './stated-rate';
-import { quoteForMessage } from './text-bytes';
+import { decodeText, quoteForMessage } from './text-bytes';
 
 const LINE_FEED = 10;
 const CARRIAGE_RETURN = 13;
@@ -21,6 +22,7 @@ const SLASH = 0x2f;
 const EXAMINED_BYTES = 262_144;
 const LONGEST_RECORD = 1_048_576;
 const MOST_FAILURES = 6;
+const LONGEST_STAMP = 64;
 
 /**
  * Reads a table of samples or changes, chunk by chunk.
@@ -31,6 +33,7 @@ export class CsvReader implements FormatReader {
   private readonly number = new DecimalNumber();
   private readonly row = new CsvRow();
   private readonly unfinished = new UnfinishedRecord();
+  private readonly calendar = new CalendarClock();
 
   private examined: Uint8Array[] = [];
   private examinedLength = 0;
@@ -88,7 +91,7 @@ export class CsvReader implements FormatReader {
       channels: table.channels.finish(table.spacing.isUniform ? interval : null),
       gaps: [],
       defects: this.defects.toArray(),
-      log: [],
+      log: null,
     };
   }
 
@@ -245,9 +248,20 @@ export class CsvReader implements FormatReader {
       return clock.toTicks(number);
     }
     if (time.index >= row.cellCount) return NaN;
+    if (time.kind === 'column' && time.isClock)
+      return this.parseClock(table, bytes.subarray(row.starts[time.index], row.ends[time.index]));
     if (!number.parse(bytes, row.starts[time.index], row.ends[time.index], table.hasComma)) return NaN;
     this.timeScale = number.exponent === null && number.wide === null ? number.scale : NaN;
     return clock.toTicks(number);
+  }
+
+  private parseClock(table: CsvTable, cell: Uint8Array): number {
+    const seconds = cell.length > LONGEST_STAMP ? null : this.calendar.toSeconds(decodeText(cell));
+    if (seconds === null) return NaN;
+    const digits = Uint8Array.from(seconds, (c) => c.charCodeAt(0));
+    // Times of day are not predicted from row to row.
+    this.timeScale = NaN;
+    return this.number.parse(digits, 0, digits.length, false) ? table.clock.toTicks(this.number) : NaN;
   }
 
   /** Time of the row in ticks; null where it has none that can be used, which is then reported. */

@@ -1,3 +1,4 @@
+import { plainNumber } from './number-text';
 import { decodeText } from './text-bytes';
 
 const MINUS = 0x2d;
@@ -14,6 +15,8 @@ const LONGEST_NUMBER = 60;
 const FINEST_FRACTION = 15;
 /** So many zeros at the end of 15 rounded digits are no chance: what came after them was noise. */
 const NOISE_ZEROS = 1000;
+/** Noise of a printed double has at least so many digits behind the point; microseconds beside seconds since 1970 have fewer. */
+const NOISE_PLACES = 10;
 
 /** Looking a power up is faster than computing it. */
 const POWERS = Array.from({ length: 16 }, (_, i) => 10 ** i);
@@ -72,10 +75,10 @@ export class DecimalNumber {
         break;
       }
     }
-    if (digits === 0) return false;
+    if (digits === 0) return bytes[start] >= 0x80 && this.parseOther(bytes, start, end, comma);
     this.exponent = null;
     this.scale = point < 0 ? 0 : i - point - 1;
-    if (i < end && !this.parseExponent(bytes, i, end)) return this.parseGroups(bytes, start, end, comma);
+    if (i < end && !this.parseExponent(bytes, i, end)) return this.parseOther(bytes, start, end, comma);
     this.wide = null;
     this.mantissa = isNegative ? -high : high;
     if (lowDigits > SAFE_DIGITS) this.takeAllDigits(bytes, start, end);
@@ -128,7 +131,7 @@ export class DecimalNumber {
     if (SAFE_DIGITS + lowDigits <= DOUBLE_DIGITS && lowDigits <= this.scale) {
       let rounded = high + (2 * low >= 10 ** lowDigits ? 1 : 0);
       let places = this.scale - lowDigits;
-      const isNoise = rounded % NOISE_ZEROS === 0 && places >= 3;
+      const isNoise = rounded % NOISE_ZEROS === 0 && this.scale >= NOISE_PLACES;
       if (isNoise || places >= FINEST_FRACTION) {
         for (; places > 0 && rounded % 10 === 0; places -= 1) rounded /= 10;
         this.mantissa = sign * rounded;
@@ -149,18 +152,20 @@ export class DecimalNumber {
     this.mantissa = Number(this.wide);
   }
 
-  /** Thousands apart, `1.234,5` or `1,234.5`: where both signs occur the last one is the decimal sign. */
-  private parseGroups(bytes: Uint8Array, start: number, end: number, comma: boolean): boolean {
+  /**
+   * What other lands write, and thousands apart, `1.234,5` or `1,234.5`: where both signs occur the last one is the decimal sign.
+   */
+  private parseOther(bytes: Uint8Array, start: number, end: number, comma: boolean): boolean {
     const text = decodeText(bytes.subarray(start, end));
     const isGerman = comma && /^[+-]?\d{1,3}(\.\d{3})+,\d*$/.test(text);
     const isEnglish = /^[+-]?\d{1,3}(,\d{3})+\.\d*$/.test(text);
-    if (!isGerman && !isEnglish) return false;
-    const plain = isGerman ? text.replaceAll('.', '') : text.replaceAll(',', '');
-    return this.parse(
-      Uint8Array.from(plain, (c) => c.charCodeAt(0)),
-      0,
-      plain.length,
-      comma,
-    );
+    const plain = isGerman
+      ? text.replaceAll('.', '')
+      : isEnglish
+        ? text.replaceAll(',', '')
+        : plainNumber(text);
+    if (plain === text) return false;
+    const digits = Uint8Array.from(plain, (c) => Math.min(255, c.charCodeAt(0)));
+    return this.parse(digits, 0, digits.length, comma);
   }
 }

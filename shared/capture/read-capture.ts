@@ -1,8 +1,10 @@
+import { ByteLogReader } from './byte-log-reader';
 import type { Capture } from './capture';
 import { CaptureError } from './capture-error';
 import { CsvReader } from './csv-reader';
 import type { FormatReader } from './format-reader';
 import { KeepRule } from './format-reader';
+import { RawBytesReader } from './raw-bytes-reader';
 import { findCharacterSet, findKind, SNIFFED_BYTES } from './sniff';
 import { intervalOfRate } from './stated-rate';
 import { Utf16Transcoder } from './utf16';
@@ -98,6 +100,8 @@ export class CaptureReader {
 
   private makeReader(kind: ReturnType<typeof findKind>): FormatReader {
     if (kind === 'vcd') return new VcdReader(this.keep);
+    if (kind === 'log') return new ByteLogReader();
+    if (kind === 'raw') return new RawBytesReader();
     const { sampleRateHz } = this.options;
     return new CsvReader(this.keep, sampleRateHz === undefined ? null : intervalOfRate(sampleRateHz));
   }

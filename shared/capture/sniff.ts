@@ -1,7 +1,10 @@
 import { CaptureError } from './capture-error';
+import { findLogLayout } from './log-layout';
+import { areRawPackets } from './raw-packets';
+import { decodeText, isControl } from './text-bytes';
 
-/** What a file is, told by its first bytes. */
-export type FileKind = 'vcd' | 'csv';
+/** What a file is, told by its first bytes. `log`: bytes with times, as lines of text; `raw`: bytes alone. */
+export type FileKind = 'vcd' | 'csv' | 'log' | 'raw';
 /** How its characters are stored. */
 export type CharacterSet = 'bytes' | 'utf-16le' | 'utf-16be';
 
@@ -42,6 +45,8 @@ export function findCharacterSet(head: Uint8Array): CharacterSet {
   let evenZeros = 0;
   let oddZeros = 0;
   for (let i = 0; i < looked; i += 2) {
+    // Zeros between control characters are no text.
+    if (isControl(head[i]) && isControl(head[i + 1])) return 'bytes';
     if (head[i] === 0) evenZeros += 1;
     if (head[i + 1] === 0) oddZeros += 1;
   }
@@ -61,9 +66,11 @@ export function findKind(head: Uint8Array): FileKind {
   const start = skipBlank(head);
   if (start === head.length)
     throw new CaptureError('empty-file', 'the file holds nothing but blanks', { byte: 0 });
+  if (areRawPackets(head)) return 'raw';
   refuseBinary(head);
   if (head[start] === 0x24 && isLetter(head[start + 1])) return 'vcd';
-  return hasWord(head, '$enddefinitions') || hasWord(head, '$timescale') ? 'vcd' : 'csv';
+  if (hasWord(head, '$enddefinitions') || hasWord(head, '$timescale')) return 'vcd';
+  return findLogLayout(decodeText(head)) === null ? 'csv' : 'log';
 }
 
 function isLetter(byte: number): boolean {
@@ -75,10 +82,6 @@ function skipBlank(head: Uint8Array): number {
   let i = head[0] === 0xef && head[1] === 0xbb && head[2] === 0xbf ? 3 : 0;
   while (i < head.length && head[i] <= 32 && head[i] !== 0) i += 1;
   return i;
-}
-
-function isControl(byte: number): boolean {
-  return byte < 32 && byte !== 9 && byte !== 10 && byte !== 12 && byte !== 13;
 }
 
 function hasControls(head: Uint8Array): boolean {

@@ -25,7 +25,19 @@ function isAscii(bytes: Uint8Array): boolean {
  * Source: RFC 3629 section 4 (overlong forms, surrogates and values above 10FFFFh are invalid).
  */
 export function decodeText(bytes: Uint8Array): string {
-  if (isAscii(bytes)) return decodeLatin1(bytes);
+  return isAscii(bytes) ? decodeLatin1(bytes) : (decodeUtf8(bytes) ?? decodeLatin1(bytes));
+}
+
+export function isUtf8(bytes: Uint8Array): boolean {
+  return isAscii(bytes) || decodeUtf8(bytes) !== null;
+}
+
+/** A byte no text has: blanks and ends of line are none. */
+export function isControl(byte: number): boolean {
+  return byte < 32 && byte !== 9 && byte !== 10 && byte !== 12 && byte !== 13;
+}
+
+function decodeUtf8(bytes: Uint8Array): string | null {
   let text = '';
   for (let i = 0; i < bytes.length;) {
     const first = bytes[i];
@@ -35,15 +47,15 @@ export function decodeText(bytes: Uint8Array): string {
       continue;
     }
     const length = first >= 0xf0 ? 4 : first >= 0xe0 ? 3 : 2;
-    if (first < 0xc2 || first > 0xf4 || i + length > bytes.length) return decodeLatin1(bytes);
+    if (first < 0xc2 || first > 0xf4 || i + length > bytes.length) return null;
     let code = first & (0x7f >> length);
     for (let k = 1; k < length; k++) {
       const next = bytes[i + k];
-      if ((next & 0xc0) !== 0x80) return decodeLatin1(bytes);
+      if ((next & 0xc0) !== 0x80) return null;
       code = (code << 6) | (next & 0x3f);
     }
     const isOverlong = length > 2 && code < (length === 3 ? 0x800 : 0x10000);
-    if (isOverlong || (code >= 0xd800 && code <= 0xdfff) || code > 0x10ffff) return decodeLatin1(bytes);
+    if (isOverlong || (code >= 0xd800 && code <= 0xdfff) || code > 0x10ffff) return null;
     text += String.fromCodePoint(code);
     i += length;
   }

@@ -104,7 +104,7 @@ export class VcdReader implements FormatReader {
       channels,
       gaps,
       defects: this.defects.toArray(),
-      log: [],
+      log: null,
     };
   }
 

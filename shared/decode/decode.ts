@@ -24,6 +24,7 @@ import { findResets } from '../resets/find-resets';
 import type { Reset } from '../resets/reset';
 import type { Span } from '../time/ticks';
 import { ticksPerSecond, toTicks } from '../time/time-base';
+import { decodeLog } from './decode-log';
 import type { Decoded } from './decoded';
 import { packetSource } from './packet-source';
 import { findResolution } from './resolution';
@@ -44,6 +45,7 @@ export interface DecodeOptions {
  * @throws MapError where the map names a channel that is not in the capture
  */
 export function decode(capture: Capture, map: LineMap = {}, options: DecodeOptions = {}): Decoded {
+  if (capture.log !== null) return decodeLog(capture, capture.log, map, options);
   const perSecond = ticksPerSecond(capture.timeBase);
   const unknownSpans = unknownSpansOf(capture, map);
   const question: DataQuestion = {
