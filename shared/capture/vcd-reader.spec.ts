@@ -105,6 +105,13 @@ describe('declarations of a dump', () => {
     },
   );
 
+  it('forgives scopes that are not closed, and ones closed too often', () => {
+    const open = `$timescale 1us $end $scope module t $end $scope interface i $end ${TWO} $enddefinitions $end #0 1! #1`;
+    expect(readText(open).channels.map(({ name }) => name)).toEqual(['t.i.a', 't.i.b']);
+    const closed = `$timescale 1us $end $upscope $end $upscope $end $scope module t $end ${TWO} $enddefinitions $end #0 1! #1`;
+    expect(readText(closed).channels.map(({ name }) => name)).toEqual(['t.a', 't.b']);
+  });
+
   it('skips free text, which may hold anything but $end', () => {
     const text =
       '$date today #5 0! $var 1b $end $version\n#1 $scope x\n$end $comment Größe $enddefinitions $end ';
@@ -162,6 +169,26 @@ describe('values of a dump', () => {
     expect(capture.gaps).toEqual([{ startTicks: 10, endTicks: 30 }]);
     expect(edgesOf(capture, 't.a')).toBe('0 x@10 1@30 0@40');
     expect(edgesOf(capture, 't.b')).toBe('1 x@10 1@30');
+  });
+
+  // Source: a dump by an open simulator, in which reals become NaN (protocol-facts 8.1).
+  it('takes vectors and reals that are switched off for a gap', () => {
+    const declarations = '$var reg 4 ! d [3:0] $end $var real 64 r volt $end';
+    const body = '#0 b101 ! r9.5 r #10 $dumpoff bx ! rNaN r $end #30 $dumpon b1 ! r-9.5 r $end #40';
+    const capture = readText(dump(declarations, body));
+    expect([2, 0].map((bit) => edgesOf(capture, `t.d[${bit}]`))).toEqual(['1 x@10 0@30', '1 x@10 1@30']);
+    const { values, times } = analogOf(capture, 't.volt');
+    expect(Array.from(values)).toEqual([9.5, NaN, -9.5]);
+    expect(times).toEqual({ kind: 'listed', ticks: Float64Array.of(0, 10, 30) });
+    expect(capture.gaps).toEqual([{ startTicks: 10, endTicks: 30 }]);
+  });
+
+  it('takes nine-valued levels in vectors, and several changes on a line', () => {
+    const declarations = `${TWO} $var reg 9 v d [8:0] $end`;
+    const capture = readText(dump(declarations, '#0 0! 0" bUX01ZWLH- v\n#5 1! 1"\tbL v 0!  x" 1" #6'));
+    const bits = [8, 7, 6, 5, 4, 3, 2, 1, 0].map((bit) => edgesOf(capture, `t.d[${bit}]`));
+    expect(bits).toEqual(['x 0@5', 'x 0@5', '0', '1 0@5', 'x 0@5', 'x 0@5', '0', '1 0@5', 'x 0@5']);
+    expect([edgesOf(capture, 't.a'), edgesOf(capture, 't.b')]).toEqual(['0', '0 1@5']);
   });
 
   it('forgives a block that is not ended', () => {
@@ -255,6 +282,7 @@ describe('a damaged dump', () => {
     ['a cut inside a block', '#10 0! #20 1! $dumpall 0!', 'cut-short 7:15', '0'],
     ['a cut before a code', '#10 0! #20 1! b1', 'cut-short 7:17', '0 1@10'],
     ['a cut inside a comment', '#10 0! #20 1! $comment lost', 'cut-short 7:15', '0 1@10'],
+    ['a cut inside a stamp', '#10 0! #20 1! #3', 'cut-short 7:15', '0 1@10'],
     ['a cut after #', '#10 0! #20 1! #', 'cut-short 7:15', '0 1@10'],
   ])('is read in spite of %s', (_, body, defect, edges) => {
     const capture = readText(dump(TWO, body));

@@ -283,6 +283,11 @@ export class VcdReader implements FormatReader {
     }
     const result = this.signals.moveTo(stamp);
     if (result === 'taken') return;
+    if (isLast) {
+      const shown = (): string => `the file ends inside the time stamp ${stamp}, or the time runs backwards`;
+      this.report('cut-short', start, shown);
+      return;
+    }
     this.isStopped = result === 'still-backwards';
     const message = this.isStopped
       ? 'the time stays behind: nothing is read from here on'
