@@ -31,6 +31,11 @@ export function judgeSaturation(context: RuleContext): RuleOutcome {
   return judgeSaturatedShare(countSaturated(context.decoded), context.setting);
 }
 
+/** Large steps of opposite sign. */
+function isWrap(a: number, b: number): boolean {
+  return Math.abs(a) >= WRAP_STEP && Math.abs(b) >= WRAP_STEP && Math.sign(a) !== Math.sign(b);
+}
+
 /** MOV-2: suspected wrap of a counter. */
 export function judgeWrap(context: RuleContext): RuleOutcome {
   const { packets, characters } = context.decoded;
@@ -39,8 +44,6 @@ export function judgeWrap(context: RuleContext): RuleOutcome {
   const places: Place[] = [];
   let count = 0;
   for (let p = 1; p < packets.count; p++) {
-    const isWrap = (a: number, b: number): boolean =>
-      Math.abs(a) >= WRAP_STEP && Math.abs(b) >= WRAP_STEP && Math.sign(a) !== Math.sign(b);
     if (!isWrap(packets.dx[p - 1], packets.dx[p]) && !isWrap(packets.dy[p - 1], packets.dy[p])) continue;
     const from = characters.startTicks[packets.firstCharacter[p - 1]];
     const to = characters.startTicks[packets.firstCharacter[p]];
