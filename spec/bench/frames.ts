@@ -68,7 +68,7 @@ async function measure(
   const tape = page.getByRole('application');
   await tape.waitFor();
   await page.waitForTimeout(1500);
-  // The loader of these scripts names inner functions by a helper that the page does not have.
+  // The loader of these scripts wraps inner functions in one that the page does not have.
   await page.evaluate('globalThis.__name = (f) => f');
   const stamps = await page.evaluate(
     ({ moveMs }) =>
