@@ -61,6 +61,7 @@ export class ByteLogReader implements FormatReader {
       channels: [],
       gaps: [],
       defects: this.defects.toArray(),
+      notes: [],
       log,
     };
   }

@@ -80,6 +80,8 @@ export interface Capture {
   /** Stretches where the recording was switched off: nothing is known there. */
   readonly gaps: readonly Span[];
   readonly defects: readonly Defect[];
+  /** What the recording is not good enough for, and what would do: no damage, and no reason to doubt what was read. */
+  readonly notes: readonly Defect[];
   /** Only for `bytes`, which have no channels; else null. */
   readonly log: ByteLog | null;
 }

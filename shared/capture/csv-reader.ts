@@ -1,5 +1,5 @@
 import { CalendarClock } from './calendar-clock';
-import type { Capture } from './capture';
+import type { Capture, Defect } from './capture';
 import { CaptureError } from './capture-error';
 import { CsvCells } from './csv-cells';
 import { findDialect } from './csv-dialect';
@@ -9,6 +9,7 @@ import { DecimalNumber } from './decimal-number';
 import type { Place } from './defect-list';
 import { DefectList } from './defect-list';
 import type { FormatReader, KeepRule } from './format-reader';
+import { describeHoles, noteCoarseness, noteJitter } from './sampling-notes';
 import type { SampleInterval } from './stated-rate';
 import { decodeText, quoteForMessage } from './text-bytes';
 
@@ -80,6 +81,7 @@ export class CsvReader implements FormatReader {
       });
     }
     const interval = table.time.kind === 'rows' ? 1 : table.spacing.sampleInterval(table.channels.hasAnalog);
+    const notes = this.noteSampling(table, interval);
     return {
       format: 'csv',
       byteLength: this.bytesBefore,
@@ -91,8 +93,21 @@ export class CsvReader implements FormatReader {
       channels: table.channels.finish(table.spacing.isUniform ? interval : null),
       gaps: [],
       defects: this.defects.toArray(),
+      notes,
       log: null,
     };
+  }
+
+  /** What the spacing of the rows is not good enough for. Holes in which an element can hide are defects. */
+  private noteSampling(table: CsvTable, interval: number | null): readonly Defect[] {
+    const sampling = table.describeSampling(interval);
+    const missing = describeHoles(sampling);
+    if (missing?.isDamage === true) this.defects.add(missing.note.code, missing.note.message, missing.note);
+    return [
+      noteCoarseness(sampling.intervalS, table.channels.hasAnalog),
+      noteJitter(sampling),
+      missing?.isDamage === false ? missing.note : null,
+    ].filter((note) => note !== null);
   }
 
   /** Finds the dialect and takes what was held back for it. */
@@ -163,6 +178,7 @@ export class CsvReader implements FormatReader {
       this.isAfterReturn = false;
       row.split(bytes, i, table.separator);
       if (row.end === bytes.length && !isFinal) break;
+      table.spacing.lineOffset = this.line - table.spacing.rows;
       const isTaken = !isComment(bytes, i, table.separator) && this.takeRow(table, bytes);
       this.line += row.extraLines;
       const hasSuccessors = isTaken && this.isPredicting && row.extraLines === 0;
@@ -189,6 +205,7 @@ export class CsvReader implements FormatReader {
     }
     const isReady =
       this.cells?.hasBadCell === false && predicted.prepare(bytes, this.row, next, table, this.timeScale);
+    table.spacing.lineOffset = this.line + 1 - table.spacing.rows;
     const stop = isReady ? predicted.take(bytes, view, next) : next;
     this.predictionFailures = stop > next ? 0 : Math.min(this.predictionFailures + 1, MOST_FAILURES);
     if (this.predictionFailures > 2) this.predictionPause = 1 << this.predictionFailures;
@@ -211,6 +228,7 @@ export class CsvReader implements FormatReader {
     if (ticks === null) return false;
     if (this.isDoubtful) {
       if (ticks > table.lastTicks + 1) table.channels.forget(table.lastTicks + 1);
+      table.spacing.skipTo(ticks);
       this.isDoubtful = false;
     }
     const isUnchanged = this.cells?.take(bytes, row, ticks) ?? true;

@@ -8,8 +8,10 @@ import { BUSY_SPACING_S } from './digital-recorder';
 import type { KeepRule } from './format-reader';
 import { PredictedRows } from './predicted-rows';
 import { RowSpacing } from './row-spacing';
+import type { Sampling } from './sampling-notes';
 import type { SampleInterval } from './stated-rate';
 import type { TimeBase } from '../time/time-base';
+import { secondsPerTick, toSeconds } from '../time/time-base';
 
 /** A stated interval is cut off at this many decimal places of itself where times span too much. */
 const PLACES_OF_COUNTS = 9;
@@ -67,6 +69,28 @@ export class CsvTable {
 
   get timeBase(): TimeBase {
     return this.clock.timeBase(this.unit.numerator, this.unit.denominator);
+  }
+
+  /** How the rows stand in time. `interval`: in ticks; null where they are changes, of which nothing can be missing. */
+  describeSampling(interval: number | null): Sampling {
+    const { spacing, timeBase } = this;
+    const tickS = secondsPerTick(timeBase);
+    const isStamped = interval !== null && this.time.kind !== 'rows';
+    const { nearest, farthest } = spacing.range;
+    const { count, missing, longest, firstTicks, firstLine } = spacing.holes;
+    return {
+      intervalS: (interval ?? this.clock.unitTicks) * tickS,
+      shortestS: nearest * tickS,
+      longestS: farthest * tickS,
+      isJittering: isStamped && spacing.isJittering,
+      holes: {
+        count: isStamped && spacing.hasHoles ? count : 0,
+        missing,
+        longestS: longest * tickS,
+        firstS: toSeconds(timeBase, firstTicks),
+        firstLine,
+      },
+    };
   }
 
   private scaleTimes(scale: (time: number) => number): void {

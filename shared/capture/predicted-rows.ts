@@ -171,7 +171,11 @@ export class PredictedRows {
       const step = (next - value) | 0;
       if (step !== usualStep) {
         if (step < 0) break;
-        spacing.takeUnusual(step * ticksPerWindowStep);
+        spacing.takeUnusual(
+          step * ticksPerWindowStep,
+          (i - start) / length,
+          this.ticks + (next - first) * ticksPerWindowStep,
+        );
         unusualRows = (unusualRows + 1) | 0;
       }
       value = next;

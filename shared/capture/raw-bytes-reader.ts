@@ -41,6 +41,7 @@ export class RawBytesReader implements FormatReader {
       channels: [],
       gaps: [],
       defects: defects.toArray(),
+      notes: [],
       log,
     };
   }

@@ -7,6 +7,7 @@ import type { RecorderClock } from './digital-recorder';
 import { BUSY_SPACING_S } from './digital-recorder';
 import type { FormatReader, KeepRule } from './format-reader';
 import { PlainChanges } from './plain-changes';
+import { noteCoarseness } from './sampling-notes';
 import { decodeText, quoteForMessage } from './text-bytes';
 import { errorAt, TextPlace } from './text-place';
 import { VcdHeader } from './vcd-header';
@@ -93,6 +94,7 @@ export class VcdReader implements FormatReader {
     const { numerator, denominator } = this.header.timescale ?? { numerator: 1n, denominator: 1n };
     const { clock } = this.signals;
     const { channels, endTicks, gaps } = this.signals.finish();
+    const coarse = noteCoarseness(Number(numerator) / Number(denominator), false);
     return {
       format: 'vcd',
       byteLength: this.place.bytesBefore,
@@ -104,6 +106,7 @@ export class VcdReader implements FormatReader {
       channels,
       gaps,
       defects: this.defects.toArray(),
+      notes: coarse === null ? [] : [coarse],
       log: null,
     };
   }
