@@ -70,7 +70,11 @@ export function decodeLog(capture: Capture, log: ByteLog, map: LineMap, options:
               runnerUp: choice.runnerUp,
             },
           ],
-    resolutionTicks: map.resolutionS === undefined ? capture.unitTicks : map.resolutionS * perSecond,
+    // Printed digits are no resolution: a stamp comes after its character, and after whatever held it back.
+    resolutionTicks:
+      map.resolutionS === undefined
+        ? Math.max(capture.unitTicks, characterTicks)
+        : map.resolutionS * perSecond,
     framing: null,
     protocol: choice?.protocol ?? null,
     characters,

@@ -94,6 +94,60 @@ describe('any bytes whatever', () => {
     );
   });
 
+  it('that look like a log are read or refused', () => {
+    const piece = fc.constantFrom(
+      ...[
+        '0.1',
+        '0.5',
+        '12:00:01.5',
+        '[9]',
+        'RX',
+        'TX',
+        '<',
+        '>',
+        '4D',
+        '40',
+        '00',
+        '3F 3F',
+        '87',
+        '0x1',
+        '"M3"',
+        '<NUL>',
+      ],
+      ...['zz', ';', ',', '\n', '\n', '\n', '#', 'RTS ON', '1e400', '-1'],
+    );
+    fc.assert(
+      fc.property(fc.array(piece, { maxLength: 200 }), (pieces) => {
+        swallow(new TextEncoder().encode(pieces.join(' ')));
+        swallow(new TextEncoder().encode(`0.01 RX 4D\n0.02 RX 40\n0.03 RX 00\n${pieces.join(' ')}`));
+      }),
+      { numRuns: 500 },
+    );
+  });
+
+  it('that look like packets are read or refused', () => {
+    const byte = fc.constantFrom(
+      0x4d,
+      0x33,
+      0x5a,
+      0x40,
+      0x4f,
+      0x00,
+      0x3f,
+      0x20,
+      0x87,
+      0x80,
+      0xc0,
+      0x08,
+      0x28,
+      0xff,
+    );
+    fc.assert(
+      fc.property(fc.array(byte, { maxLength: 300 }), (bytes) => swallow(Uint8Array.from(bytes))),
+      { numRuns: 500 },
+    );
+  });
+
   it('made from a real capture by a few wrong bytes are read or refused', () => {
     const change = fc.record({
       at: fc.nat(),
