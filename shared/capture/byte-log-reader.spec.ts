@@ -231,6 +231,39 @@ describe('the chunks of a log', () => {
   });
 });
 
+describe('a log in one line', () => {
+  it('is read in pieces, whatever the chunks', () => {
+    const text = '4D3340000040013F'.repeat(150_000);
+    const whole = readText(text);
+    expect(whole.log?.count).toBe(text.length / 2);
+    const other = readBytes(bytesOf(text), {}, 777_777);
+    expect(other.log?.values.every((value, i) => value === whole.log?.values[i])).toBe(true);
+    expect(other.defects).toEqual(whole.defects);
+    expect(whole.byteLength).toBe(text.length);
+  });
+
+  // Patterns that look back and forth would need hours for these.
+  it.each([
+    ['marks', '-'.repeat(400_000)],
+    ['points and dashes', '.-/'.repeat(100_000)],
+    ['blanks between digits', `0.1 RX 4D${' '.repeat(300_000)}4D\n0.2 RX 33\n`],
+    ['bytes', `0.1 RX ${'4D '.repeat(300_000)}\n0.2 RX 33\n`],
+    ['times', `${'12:00:00 '.repeat(50_000)}\n`],
+    ['text', `0.1 RX "${'\\\\'.repeat(200_000)}"\n0.2 RX "M"\n`],
+  ])('of many %s comes to an end', (_, text) => {
+    try {
+      readText(`0.01 RX 4D\n0.02 RX 33\n${text}`);
+    } catch (error) {
+      expect(error).toMatchObject({ name: 'CaptureError' });
+    }
+    try {
+      readText(text);
+    } catch (error) {
+      expect(error).toMatchObject({ name: 'CaptureError' });
+    }
+  });
+});
+
 describe('bytes without any text', () => {
   // Source: mouse(4), Linux man-pages 6.03 (M family, MM); the five-byte format: protocol-facts 5.5, as open drivers read it.
   it.each([

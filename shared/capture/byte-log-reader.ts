@@ -144,15 +144,15 @@ export class ByteLogReader implements FormatReader {
     const { clock, number } = this;
     const text = stamp.kind === 'clock' ? this.calendar.toSeconds(stamp.text) : stamp.text;
     if (clock === null || text === null) return NaN;
-    const digits = Uint8Array.from(text, (c) => c.charCodeAt(0));
-    if (!number.parse(digits, 0, digits.length, true)) return NaN;
+    if (!number.parseText(text)) return NaN;
     // One unit of the file, another of this line.
     number.scale += (stamp.places ?? layout.places) - layout.places;
     return clock.toTicks(number);
   }
 
   private report(code: string, offset: number, message: string): void {
-    const { line, lineStart } = this.lines;
-    this.defects.add(code, message, { line, column: offset + 1, byte: lineStart + offset });
+    const { line, lineStart, pieceStart } = this.lines;
+    const byte = pieceStart + offset;
+    this.defects.add(code, message, { line, column: byte - lineStart + 1, byte });
   }
 }

@@ -6,6 +6,9 @@ const DATE = String.raw`(?:(\d{4})[-/.](\d{1,2})[-/.](\d{1,2})|(\d{1,2})([./-])(
 const CLOCK = String.raw`(?:(\d{1,3}):)?(\d{1,2}):(\d{1,2})(?:[.,:](\d{1,12}))?\s*([ap]m)?`;
 const ZONE = String.raw`(Z|[+-]\d{2}:?(?:\d{2})?)?`;
 const STAMP = new RegExp(`^(?:${DATE}(?:T|\\s+|_))?${CLOCK}\\s*${ZONE}$`, 'i');
+/** What may follow a stamp that ends with its second. */
+const FRACTION = /^[.,]\d{1,12}$/;
+const SECOND = /:\d{1,2}:\d{2}$/;
 const DATE_ALONE = new RegExp(`^${DATE}$`);
 
 /** Whether a text is a time of day, with or without a date, such as `2031-04-05 12:30:00,25` or `12:30:00.25`. */
@@ -72,9 +75,16 @@ function secondsOfZone(zone: string | undefined): number {
 export class CalendarClock {
   private latest = -Infinity;
   private days = 0;
+  /** The last stamp up to its second, and what that came to: most stamps differ in their fraction only. */
+  private prefix = '';
+  private prefixSeconds = 0;
 
   /** Seconds as a decimal number, exact; null where the text is no stamp. */
   toSeconds(text: string): string | null {
+    const { prefix } = this;
+    if (prefix !== '' && text.startsWith(prefix) && FRACTION.test(text.slice(prefix.length))) {
+      return `${this.prefixSeconds}.${text.slice(prefix.length + 1)}`;
+    }
     const time = secondsOfClock(text);
     if (time === null) return null;
     if (!time.hasDate) {
@@ -83,6 +93,9 @@ export class CalendarClock {
     }
     const seconds = time.seconds + this.days * SECONDS_PER_DAY;
     if (time.fraction === '') return `${seconds}`;
+    const end = text.length - time.fraction.length - 1;
+    this.prefix = seconds >= 0 && SECOND.test(text.slice(0, end)) ? text.slice(0, end) : '';
+    this.prefixSeconds = seconds;
     if (seconds >= 0) return `${seconds}.${time.fraction}`;
     // Before 1970: −5 s and 0.25 s are −4.75 s.
     const places = 10n ** BigInt(time.fraction.length);

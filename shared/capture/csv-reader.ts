@@ -276,10 +276,9 @@ export class CsvReader implements FormatReader {
   private parseClock(table: CsvTable, cell: Uint8Array): number {
     const seconds = cell.length > LONGEST_STAMP ? null : this.calendar.toSeconds(decodeText(cell));
     if (seconds === null) return NaN;
-    const digits = Uint8Array.from(seconds, (c) => c.charCodeAt(0));
     // Times of day are not predicted from row to row.
     this.timeScale = NaN;
-    return this.number.parse(digits, 0, digits.length, false) ? table.clock.toTicks(this.number) : NaN;
+    return this.number.parseText(seconds) ? table.clock.toTicks(this.number) : NaN;
   }
 
   /** Time of the row in ticks; null where it has none that can be used, which is then reported. */

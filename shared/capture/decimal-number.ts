@@ -34,6 +34,7 @@ export class DecimalNumber {
   scale = 0;
   /** Power of ten of the exponent as written; null without one. */
   exponent: number | null = null;
+  private readonly digits = new Uint8Array(LONGEST_NUMBER);
 
   setInteger(value: number): void {
     this.mantissa = value;
@@ -88,6 +89,14 @@ export class DecimalNumber {
       this.scale = Math.max(0, Math.min(this.scale, FINEST_FRACTION));
     }
     return true;
+  }
+
+  /** As `parse`, for a text of ASCII. */
+  parseText(text: string): boolean {
+    const { length } = text;
+    if (length > LONGEST_NUMBER) return false;
+    for (let i = 0; i < length; i++) this.digits[i] = text.charCodeAt(i);
+    return this.parse(this.digits, 0, length, true);
   }
 
   /** The nearest double, give or take its last place. */

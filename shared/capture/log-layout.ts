@@ -16,8 +16,9 @@ export interface LogLayout extends LineStyle {
   readonly headerLines: number;
 }
 
-/** Lines looked at. */
+/** Lines looked at, and the characters of each in which its time must stand. */
 const MOST_LINES = 400;
+const BEGIN = 100;
 const MOST_HEADER_LINES = 20;
 /** Share of the lines that must read as bytes: some may be damaged. */
 const MANY = 0.6;
@@ -138,9 +139,10 @@ function isQuotedText(payload: string): boolean {
 const COMMA_TIME = /^\W*(?:[\d./-]+[T\s]\s*)?(?:\d+:)*\d+,(\d+)\s*(s|ms|us|µs|μs|ns)?["\])]?([\s;|:]|$)/i;
 
 function findStyle(all: readonly string[]): LineStyle {
-  const header = all.findIndex((row) => /^\W*([a-z<>-]+\W+)?\d/i.test(row));
-  const rows = all.slice(Math.max(0, header));
-  const hasOffsets = areOffsets(rows);
+  const header = all.findIndex((row) => /^\W*([a-z<>-]+\W+)?\d/i.test(row.slice(0, BEGIN)));
+  const whole = all.slice(Math.max(0, header));
+  const hasOffsets = areOffsets(whole);
+  const rows = whole.map((row) => row.slice(0, BEGIN));
   const withComma = rows.filter((row) => {
     const [whole, digits = '', unit, next = ''] = COMMA_TIME.exec(row) ?? [];
     return whole !== undefined && (digits.length > 2 || unit !== undefined || /[;|\t]/.test(next));
@@ -191,7 +193,7 @@ function statedPlaces(lines: readonly string[]): number | null {
   for (const line of lines) {
     const [, unit] =
       /\b(?:time|timestamp|stamp|zeit|t|elapsed)(?:[\s_-]*unit)?[\s_]*[[(/:=_,]?\s*(?:in\s+)?(s|sec|seconds|ms|milliseconds|us|µs|μs|microseconds|ns|nanoseconds)\b/i.exec(
-        line,
+        line.slice(0, BEGIN),
       ) ?? [];
     const places = unit === undefined ? undefined : placesOfTimeUnit(unit);
     if (places !== undefined) return places;

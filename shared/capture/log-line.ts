@@ -61,6 +61,9 @@ const GAP = /(?:[\s,;|]|-(?=\s))*/y;
 const OFFSET = /\s*[0-9a-f]{4,8}:?(?=\s)/iy;
 /** A time and a place between it and the bytes at most: number of the line, time, mark. */
 const MOST_ITEMS = 3;
+const LONGEST_CLOCK = 64;
+/** A clock has its first colon within so many characters, a date and a bracket in front of it. */
+const LONGEST_DATE = 16;
 
 function numberPattern(sign: string): RegExp {
   const number = String.raw`([+-]?\d+(?:${sign}\d+)?(?:e[+-]?\d+)?)`;
@@ -75,7 +78,8 @@ export function splitLogLine(line: string, style: LineStyle): LogLine {
   let sender: Sender | null = null;
   for (let item = 0; item < MOST_ITEMS; item++) {
     at = after(GAP, line, at);
-    const mark: RegExpExecArray | null = sender === null ? matchAt(MARK, line, at) : null;
+    const mark: RegExpExecArray | null =
+      sender === null && !isDigit(line, at) ? matchAt(MARK, line, at) : null;
     if (mark !== null) {
       sender = senderOfMark(mark);
       at += mark[0].length;
@@ -104,7 +108,8 @@ function senderOfMark({ groups }: RegExpExecArray): Sender {
 }
 
 function findStamp(line: string, at: number, style: LineStyle, isSecond: boolean): FoundStamp | null {
-  const clock = longestClock(line, at, style.hasDecimalComma);
+  const mayBeClock = line.slice(at, at + LONGEST_DATE).includes(':');
+  const clock = mayBeClock ? longestClock(line, at, style.hasDecimalComma) : null;
   if (clock !== null) {
     const stamp: LogStamp = { kind: 'clock', text: clock.text, places: 0, isInteger: false };
     return { stamp, end: clock.end };
@@ -132,6 +137,7 @@ function longestClock(
     const more = matchAt(piece, line, end);
     if (more === null || !/\d/.test(line.slice(at, at + 2))) break;
     end += more[0].length;
+    if (end - at > LONGEST_CLOCK) break;
     const text = line
       .slice(at, end)
       .replace(/^["[(]\s*/, '')
@@ -140,6 +146,11 @@ function longestClock(
     if (isClockText(text)) best = { text, end };
   }
   return best;
+}
+
+function isDigit(line: string, at: number): boolean {
+  const c = line.charCodeAt(at);
+  return c >= 48 && c <= 57;
 }
 
 function matchAt(pattern: RegExp, text: string, at: number): RegExpExecArray | null {

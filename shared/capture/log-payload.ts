@@ -27,7 +27,7 @@ export function parseNumbers(payload: string, notation: 'hex' | 'decimal'): LogP
   for (;;) {
     const start = at + lengthAt(BETWEEN, payload, at);
     if (values.length > 0 && /[\s,;|]/.test(payload[at] ?? '')) {
-      const beside = readBeside(payload.slice(at), values);
+      const beside = readBeside(payload, at, values);
       if (beside !== null) return { values, badAt: -1, sender: beside.sender };
     }
     if (start === payload.length) break;
@@ -45,17 +45,34 @@ export function parseNumbers(payload: string, notation: 'hex' | 'decimal'): LogP
   return { values, badAt: -1, sender: null };
 }
 
-/** What may stand behind bytes: a comment, a mark, or the same bytes once more as characters. */
-function readBeside(rest: string, values: readonly number[]): { readonly sender: Sender | null } | null {
-  const text = rest.trim();
-  if (/^[\s,]*(#|;|\/\/)/.test(rest)) return { sender: null };
-  const sender = senderOf(text.replace(/^[\s,;|:]+/, ''));
+const SEPARATORS = /[\s,;|:]*/y;
+const LONGEST_MARK = 40;
+
+/** What may stand behind bytes at `from`: a comment, a mark, or the same bytes once more as characters. */
+function readBeside(
+  payload: string,
+  from: number,
+  values: readonly number[],
+): { readonly sender: Sender | null } | null {
+  const at = from + lengthAt(SEPARATORS, payload, from);
+  const isComment =
+    payload[at] === '#' || payload.startsWith('//', at) || /^\s+;/.test(payload.slice(from, at));
+  if (isComment) return { sender: null };
+  const sender = payload.length - at > LONGEST_MARK ? null : senderOf(payload.slice(at).trimEnd());
   if (sender !== null) return { sender };
-  const bare = text.replace(/^[,;|]*\s*["'|<]?/, '');
-  const isCharacter = (value: number, c: string): boolean =>
-    c === String.fromCharCode(value & 0x7f) || c === String.fromCharCode(value) || c === '.' || c === '·';
-  const isSame = values.every((value, i) => isCharacter(value, bare[i] ?? ''));
-  return isSame && /^["'|>]?$/.test(bare.slice(values.length).trim()) ? { sender: null } : null;
+  const start = at + Number(/["'<]/.test(payload[at] ?? ''));
+  const rest = payload.length - start - values.length;
+  // A quote, bar or bracket may close the characters.
+  if (rest < 0 || rest > 2) return null;
+  const isSame = values.every((value, i) => isCharacterOf(payload[start + i], value));
+  return isSame && /^\s?["'|>]?$/.test(payload.slice(start + values.length)) ? { sender: null } : null;
+}
+
+/** A point stands for what cannot be printed. */
+function isCharacterOf(c: string, value: number): boolean {
+  return (
+    c === '.' || c === '·' || c === String.fromCharCode(value) || c === String.fromCharCode(value & 0x7f)
+  );
 }
 
 /** Names of control characters. Source: ISO/IEC 646. */
