@@ -1,7 +1,7 @@
 import { framingName } from '#shared/characters/framing';
 import type { PreviewView } from '#shared/contract/http/mapping';
 import type { Decoded } from '#shared/decode/decoded';
-import { countUpTo } from '#shared/line/level-at';
+import { countUpTo } from '#shared/time/sorted-search';
 import { BUTTON_NAMES } from '#shared/packets/packet-table';
 import { secondsPerTick, ticksPerSecond, toSeconds } from '#shared/time/time-base';
 import { detectionsOf, linesOf } from './decode-figures';

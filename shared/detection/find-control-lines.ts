@@ -1,6 +1,7 @@
 import type { Capture, Channel } from '../capture/capture';
 import type { CharacterTable } from '../characters/character-table';
-import { countUpTo, levelAt } from '../line/level-at';
+import { levelAt } from '../line/level-at';
+import { countUpTo } from '../time/sorted-search';
 import type { LevelTrace } from '../line/level-trace';
 import { OFF, ON } from '../line/level-trace';
 import type { LineRole, Polarity, Thresholds } from '../line/line-map';

@@ -1,17 +1,6 @@
+import { countUpTo } from '../time/sorted-search';
 import type { Ticks } from '../time/ticks';
 import type { LevelTrace } from './level-trace';
-
-/** How many of the sorted `ticks` are ≤ `at`. */
-export function countUpTo(ticks: Float64Array, at: number): number {
-  let low = 0;
-  let high = ticks.length;
-  while (low < high) {
-    const middle = (low + high) >>> 1;
-    if (ticks[middle] <= at) low = middle + 1;
-    else high = middle;
-  }
-  return low;
-}
 
 /** Level of the trace at an instant; a change at exactly that instant has already happened. */
 export function levelAt(trace: LevelTrace, at: Ticks): number {

@@ -1,6 +1,6 @@
 import type { AnalogChannel } from '../capture/capture';
 import type { Ticks } from '../time/ticks';
-import { countUpTo } from './level-at';
+import { countUpTo } from '../time/sorted-search';
 
 /** Instants at which a channel of steps is looked at within a stretch. */
 const LOOKS_AT_STEPS = 9;

@@ -1,6 +1,7 @@
 import type { CharacterTable } from '../characters/character-table';
 import { BREAK_ERROR } from '../characters/character-table';
-import { countUpTo, holdsLevel, reachesLevel } from '../line/level-at';
+import { holdsLevel, reachesLevel } from '../line/level-at';
+import { countUpTo } from '../time/sorted-search';
 import type { LevelTrace } from '../line/level-trace';
 import { OFF, ON, UNKNOWN } from '../line/level-trace';
 import { ReplyReader } from './identification';

@@ -1,4 +1,5 @@
-import { countUpTo, holdsLevel, levelAt, reachesLevel } from '../line/level-at';
+import { holdsLevel, levelAt, reachesLevel } from '../line/level-at';
+import { countUpTo } from '../time/sorted-search';
 import { MARK, OFF, ON, UNKNOWN } from '../line/level-trace';
 import { BREAK_ERROR } from '../characters/character-table';
 import type { ControlEvent, Reset } from '../resets/reset';

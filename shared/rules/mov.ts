@@ -1,6 +1,7 @@
 import type { DeclaredSpan } from '../line/line-map';
 import type { Decoded } from '../decode/decoded';
 import { poissonUpperBound } from '../statistics/poisson';
+import { countBefore } from '../time/sorted-search';
 import { toTicks } from '../time/time-base';
 import { judgeSaturatedShare } from './pooled';
 import type { Place, RuleContext, RuleOutcome } from './rule-context';
@@ -116,14 +117,7 @@ function sumSpans(context: RuleContext, kind: DeclaredSpan['kind']): SpanSum[] {
 
 /** Index of the first packet that starts at or after an instant. */
 function firstPacketFrom({ packets, characters }: Decoded, at: number): number {
-  let low = 0;
-  let high = packets.count;
-  while (low < high) {
-    const middle = (low + high) >>> 1;
-    if (characters.startTicks[packets.firstCharacter[middle]] < at) low = middle + 1;
-    else high = middle;
-  }
-  return low;
+  return countBefore(packets.firstCharacter, countBefore(characters.startTicks, at));
 }
 
 /** Judges each declared span by one figure. */

@@ -1,6 +1,6 @@
 import { packetSource } from '../decode/packet-source';
 import type { Decoded } from '../decode/decoded';
-import { countUpTo } from '../line/level-at';
+import { countBefore, countUpTo } from '../time/sorted-search';
 import { decodePackets } from '../packets/decode-packets';
 import type { PacketTable, Protocol } from '../packets/packet-table';
 import { EXPLICIT_RELEASE, HAS_FOURTH, MIDDLE } from '../packets/packet-table';
@@ -149,8 +149,8 @@ interface Change {
 /** The begin and the end of a run, as far as packets of the capture's protocol lie before and after it. */
 function changesAt({ characters, packets }: Decoded, protocol: Protocol, run: StrangeRun): Change[] {
   const firstPackets = packets.firstCharacter;
-  const before = lastBelow(firstPackets, run.firstCharacter);
-  const after = lastBelow(firstPackets, run.lastCharacter + 1) + 1;
+  const before = countBefore(firstPackets, run.firstCharacter) - 1;
+  const after = countUpTo(firstPackets, run.lastCharacter);
   const changes: Change[] = [];
   if (before >= LEAST_RUN - 1) {
     const end = firstPackets[before] + packets.characterCount[before] - 1;
@@ -170,18 +170,6 @@ function changesAt({ characters, packets }: Decoded, protocol: Protocol, run: St
     });
   }
   return changes.map((change) => ({ ...change, to: Math.max(change.to, change.from) }));
-}
-
-/** Index of the last entry of an ascending list below `limit`; −1 if none. */
-function lastBelow(list: Int32Array, limit: number): number {
-  let low = 0;
-  let high = list.length;
-  while (low < high) {
-    const middle = (low + high) >>> 1;
-    if (list[middle] < limit) low = middle + 1;
-    else high = middle;
-  }
-  return low - 1;
 }
 
 /** A device may take so long to follow a command, seconds. Source: protocol-facts 3.2, host H: echo within 1 s. */

@@ -1,5 +1,5 @@
 import { computed, Injectable, signal } from '@angular/core';
-import { countBefore, countUpTo } from './drawing/column-search';
+import { countBefore, countUpTo } from '#shared/time/sorted-search';
 import { describe } from './drawing/describe';
 import { stepToEdge } from './drawing/hit-test';
 import type { LaneId } from './drawing/lanes';

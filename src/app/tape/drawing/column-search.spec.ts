@@ -1,6 +1,7 @@
 import * as fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { countBefore, countUpTo, indexesTouching } from './column-search';
+import { indexesTouching } from './column-search';
+import { countBefore, countUpTo } from '#shared/time/sorted-search';
 
 const sorted = fc
   .array(fc.integer({ min: 0, max: 50 }), { maxLength: 40 })

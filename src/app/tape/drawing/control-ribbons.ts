@@ -1,6 +1,6 @@
 import type { TapeLine } from '#shared/contract/tape-payload';
 import { UNKNOWN } from '#shared/line/level-trace';
-import { countUpTo } from './column-search';
+import { countUpTo } from '#shared/time/sorted-search';
 
 /** A stretch of one level of a line, cut to the window. */
 export interface LevelPiece {

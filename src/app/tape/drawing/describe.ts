@@ -1,6 +1,6 @@
 import { BREAK_ERROR, FRAMING_ERROR, PARITY_ERROR } from '#shared/characters/character-table';
 import { BUTTON_NAMES } from '#shared/packets/packet-table';
-import { countBefore, countUpTo } from './column-search';
+import { countBefore, countUpTo } from '#shared/time/sorted-search';
 import { formatFigure, formatMs, formatPlain, hexByte } from './figures';
 import { VERDICT_WORDS } from './finding-words';
 import type { TapeModel } from './tape-model';

@@ -1,6 +1,6 @@
 import { BUTTON_NAMES } from '#shared/packets/packet-table';
 import type { ButtonName } from '#shared/packets/packet-table';
-import { countBefore, countUpTo } from './column-search';
+import { countBefore, countUpTo } from '#shared/time/sorted-search';
 import type { TapeModel } from './tape-model';
 import { ticksAtSeconds } from './time-scale';
 import type { TapeSelection } from './view';

@@ -1,4 +1,4 @@
-import { countBefore, countUpTo } from './column-search';
+import { countBefore, countUpTo } from '#shared/time/sorted-search';
 import { leadsBefore, shortValue } from './finding-words';
 import type { LaneLayout } from './lanes';
 import type { Rect } from './pen';

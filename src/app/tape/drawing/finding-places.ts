@@ -1,6 +1,6 @@
 import type { FindingView } from '#shared/contract/http/checks';
 import type { Tape, TapeLine } from '#shared/contract/tape-payload';
-import { countUpTo } from './column-search';
+import { countUpTo } from '#shared/time/sorted-search';
 import { edgesOfCharacter, worstEdge } from './edge-places';
 import type { LaneId } from './lanes';
 

@@ -1,5 +1,5 @@
 import { charactersIn } from './characters-in-view';
-import { countBefore } from './column-search';
+import { countBefore } from '#shared/time/sorted-search';
 import { layOutHeads } from './finding-heads';
 import { layOutHeldBars } from './held-bars';
 import { laneAt } from './lanes';

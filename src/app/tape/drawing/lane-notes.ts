@@ -1,6 +1,6 @@
 import type { FindingView } from '#shared/contract/http/checks';
 import { charactersIn } from './characters-in-view';
-import { countBefore } from './column-search';
+import { countBefore } from '#shared/time/sorted-search';
 import { formatMs, hexByte, shortPosition } from './figures';
 import type { LaneId, LaneLayout } from './lanes';
 import type { Rect } from './pen';

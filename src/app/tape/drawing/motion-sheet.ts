@@ -1,4 +1,4 @@
-import { countBefore, countUpTo } from './column-search';
+import { countBefore, countUpTo } from '#shared/time/sorted-search';
 import type { Palette } from './palette';
 import { Pen } from './pen';
 import type { InkedText } from './pen';

@@ -1,5 +1,5 @@
 import type { Span } from '#shared/time/ticks';
-import { countBefore } from './column-search';
+import { countBefore } from '#shared/time/sorted-search';
 import { formatPlain } from './figures';
 import type { LaneLayout } from './lanes';
 import type { Sheet } from './sheet';

@@ -7,7 +7,7 @@ import { FROM } from './scales';
 import type { Sheet } from './sheet';
 import { laneOf, middleOf } from './sheet';
 import type { LaneLayout } from './lanes';
-import { countBefore } from './column-search';
+import { countBefore } from '#shared/time/sorted-search';
 
 const STICK_COLUMN_PX = 5;
 const POST_PX = 4;

@@ -1,6 +1,6 @@
 import type { TapeLine } from '#shared/contract/tape-payload';
 import { SPACE, UNKNOWN } from '#shared/line/level-trace';
-import { countUpTo } from './column-search';
+import { countUpTo } from '#shared/time/sorted-search';
 import { spaceUpTo } from './prefix-sums';
 import type { Sheet } from './sheet';
 

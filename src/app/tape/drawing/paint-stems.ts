@@ -1,5 +1,5 @@
 import { cellOf } from './characters-in-view';
-import { countUpTo } from './column-search';
+import { countUpTo } from '#shared/time/sorted-search';
 import type { FindingHead } from './finding-heads';
 import { spaceUpTo } from './prefix-sums';
 import { FROM } from './scales';

@@ -1,7 +1,7 @@
 import type { CharacterTable } from '#shared/characters/character-table';
 import type { TapeLine } from '#shared/contract/tape-payload';
 import { SPACE } from '#shared/line/level-trace';
-import { countBefore, countUpTo } from './column-search';
+import { countBefore, countUpTo } from '#shared/time/sorted-search';
 
 /** Ticks at space (or OFF) before each edge of a line. */
 export function sumSpace(line: TapeLine): Float64Array {

@@ -1,5 +1,5 @@
 import { formatFigure, formatPlain } from './figures';
-import { countBefore } from './column-search';
+import { countBefore } from '#shared/time/sorted-search';
 import { secondsAt } from './time-scale';
 import type { TapeModel } from './tape-model';
 

@@ -1,5 +1,5 @@
 import { BREAK_ERROR, FRAMING_ERROR, PARITY_ERROR } from '#shared/characters/character-table';
-import { countBefore } from '../drawing/column-search';
+import { countBefore } from '#shared/time/sorted-search';
 import { hexByte } from '../drawing/figures';
 import type { TapeModel } from '../drawing/tape-model';
 import type { FindingsByPlace } from './findings-by-place';

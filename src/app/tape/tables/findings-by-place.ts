@@ -1,4 +1,4 @@
-import { countUpTo } from '../drawing/column-search';
+import { countUpTo } from '#shared/time/sorted-search';
 import type { TapeModel } from '../drawing/tape-model';
 import type { CellMark } from './table-row';
 

@@ -1,4 +1,4 @@
-import { countBefore } from '../drawing/column-search';
+import { countBefore } from '#shared/time/sorted-search';
 import type { TapeModel } from '../drawing/tape-model';
 import type { FindingsByPlace } from './findings-by-place';
 import { marksOf } from './findings-by-place';
